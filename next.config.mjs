@@ -19,6 +19,8 @@ const config = {
   distDir: process.env.SLACKWATER_DIST_DIR ?? ".next",
   poweredByHeader: false,
   reactStrictMode: true,
+  // `npm run typecheck` looks at everything, tests included; a build for use need not do it again
+  typescript: { ignoreBuildErrors: process.env.SLACKWATER_SKIP_TYPES === "1" },
   turbopack: { root: import.meta.dirname },
   experimental: {
     // above the default of 10 MB a request body is cut off, silently, on its way through proxy.ts
