@@ -1,0 +1,16 @@
+import type { Simulation, View } from "@/lib/engine/results";
+import { mergeEvents } from "./event-rows";
+import { milestonesOf } from "./milestones";
+import type { StepStops } from "./steps";
+
+/** Where steps stop in this run; events outside the visible window are those the run keeps (the first 200 of each kind). */
+export function runStops(simulation: Simulation, view: View, periodS: number): StepStops {
+  const times = mergeEvents(simulation.events, view.events).map((event) => event.timeS);
+  return {
+    events: times.filter((timeS, index) => index === 0 || timeS > times[index - 1]! + periodS * 1e-9),
+    milestones: milestonesOf(simulation).map((mark) => mark.timeS),
+    samples: simulation.samples.map((sample) => sample.timeS),
+    periodS,
+    durationS: simulation.durationS,
+  };
+}

@@ -1,0 +1,65 @@
+import type { TraceName } from "@/lib/engine/results";
+import type { ScenarioDocument } from "@/lib/scenario/schema";
+
+/** What the drawings need to know of a document's drive and sensing, worked out once. */
+export type SensingFacts = {
+  site: ScenarioDocument["sensing"]["site"];
+  isLegSite: boolean;
+  /** legBottom: the pair is crossed, so that forward is always up. */
+  differenceLabel: string;
+  arrangement: ScenarioDocument["sensing"]["arrangement"];
+  shuntOhm: number;
+  gainRatio: number;
+  referenceV: number | null;
+  outputMinV: number;
+  outputMaxV: number;
+  /** Motor current at which the reading leaves its span, in the direction with less room. */
+  fullScaleA: number;
+  /** A sample farther than this from the true current counts as one that misses. */
+  sampleLimitA: number;
+  /** Trace that the converter reads, and the lane that shows it. */
+  readingTrace: TraceName;
+  periodS: number;
+  durationS: number;
+};
+
+/** Two per cent of full scale, at least three steps of the converter: less than that is quantisation, not a miss. */
+const MISS_SHARE = 0.02;
+const MISS_LSB_COUNT = 3;
+
+type Sensing = ScenarioDocument["sensing"];
+
+function readingTraceOf(sensing: Sensing): TraceName {
+  if (sensing.arrangement === "combinedMidscale" || sensing.arrangement === "bipolarMidscale") return "combinedV";
+  return sensing.arrangement === "differencePair" ? "differenceV" : "outAV";
+}
+
+export const gainOf = (gain: Sensing["amplifier"]["gain"]): number => ("fixed" in gain ? gain.fixed : gain.outOhm / gain.inOhm);
+
+export function readSensing(document: ScenarioDocument): SensingFacts {
+  const { sensing } = document;
+  const { amplifier, converter } = sensing;
+  const isMidscale = sensing.arrangement === "combinedMidscale" || sensing.arrangement === "bipolarMidscale";
+  const referenceV = sensing.reference?.voltageV ?? null;
+  const voltPerAmpere = gainOf(amplifier.gain) * sensing.shunt.resistanceOhm;
+  const topV = Math.min(amplifier.outputMaxV, converter.fullScaleV);
+  const spanV = isMidscale && referenceV !== null ? Math.min(topV - referenceV, referenceV - amplifier.outputMinV) : topV - amplifier.outputMinV;
+  const fullScaleA = spanV / voltPerAmpere;
+  const stepA = converter.fullScaleV / 2 ** converter.bits / voltPerAmpere;
+  return {
+    site: sensing.site,
+    isLegSite: sensing.site === "legTop" || sensing.site === "legBottom",
+    differenceLabel: sensing.site === "legBottom" ? "B − A" : "A − B",
+    arrangement: sensing.arrangement,
+    shuntOhm: sensing.shunt.resistanceOhm,
+    gainRatio: gainOf(amplifier.gain),
+    referenceV,
+    outputMinV: amplifier.outputMinV,
+    outputMaxV: amplifier.outputMaxV,
+    fullScaleA,
+    sampleLimitA: Math.max(MISS_SHARE * fullScaleA, MISS_LSB_COUNT * stepA),
+    readingTrace: readingTraceOf(sensing),
+    periodS: 1 / document.pwm.frequencyHz,
+    durationS: document.run.durationS,
+  };
+}
