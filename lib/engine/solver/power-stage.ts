@@ -1,0 +1,331 @@
+import { fillAffineMode, ROW_CURRENT, ROW_LENGTH, rowAt, type AffineMode } from "../model/affine";
+import { ConductionResolver } from "../model/conduction";
+import { isDiodeState, LEG_HIGH_DIODE, LEG_LOW_DIODE, LEG_OPEN, LEG_STATE_COUNT } from "../model/legs";
+import type { StageParameters } from "../model/parameters";
+import { firstDownCrossing } from "./locate";
+import { buildOperator, OPERATOR_LENGTH, type Poles } from "./operator";
+import { Spectrum } from "./spectrum";
+
+export const STAGE_NO_EVENT = 0;
+export const STAGE_DIODE_ENDS = 1;
+export const STAGE_SHAFT_ZERO = 2;
+export const STAGE_BREAK_FORWARD = 3;
+export const STAGE_BREAK_REVERSE = 4;
+export const STAGE_SOURCE = 5;
+export const STAGE_DIODE_STARTS = 6;
+
+const RING = 12; // durations kept per mode: a PWM period has at most about ten different ones
+
+/** A mode with its spectrum and the operators built for it; refilled in place when parameters change. */
+export class ModeSlot {
+  readonly mode: AffineMode = { legA: 0, legB: 0, shaftSign: 0, sourceConducts: true, a: new Float64Array(9), b: new Float64Array(3), rows: new Float64Array(ROW_LENGTH), isCurrentAlgebraic: false, isCurrentOpen: false };
+  readonly spectrum = new Spectrum();
+  version = -1;
+  tangentSpeedRadPerS = 0;
+  readonly durations = new Float64Array(RING).fill(-1);
+  readonly operators: Float64Array[] = [];
+  next = 0;
+  /** Rows that the sensing chain derives from this mode, and the fill for which they hold. */
+  readonly sense = new Float64Array(28);
+  senseStamp = -1;
+}
+
+/**
+ * The power stage between switching instants: state, conduction mode, exact propagation, its own events.
+ * x = [motor current A, speed rad/s, bus voltage V]. The caller sets gates and parameters, asks for the next event inside
+ * an interval, commits, and applies the event. Tangent touches of a guard are not events (see firstDownCrossing).
+ */
+export class PowerStage {
+  readonly x = new Float64Array(3);
+  readonly xEnd = new Float64Array(3);
+  parameters!: StageParameters;
+  slot!: ModeSlot;
+  gateA = 0;
+  gateB = 0;
+  shaftSign = 0;
+  sourceConducts = true;
+  /** Rises with every change of parameters: modes filled before are stale. */
+  version = 0;
+  /** Rises with every refill of a mode, so that what others derive from it can be kept beside it. */
+  fills = 0;
+  eventKind = STAGE_NO_EVENT;
+  operatorBuilds = 0;
+  crossings = 0;
+
+  private readonly slots: (ModeSlot | undefined)[] = new Array(LEG_STATE_COUNT * LEG_STATE_COUNT * 6);
+  private readonly resolver = new ConductionResolver();
+  private readonly guard = new Float64Array(4);
+
+  constructor(private readonly poles: Poles) {}
+
+  get mode(): AffineMode {
+    return this.slot.mode;
+  }
+
+  setParameters(parameters: StageParameters): void {
+    this.parameters = parameters;
+    this.version++;
+    if (!parameters.hasBusState) this.x[2] = parameters.sourceV;
+    if (parameters.isLocked) {
+      this.x[1] = 0;
+      this.shaftSign = 0;
+    }
+  }
+
+  /** Limits of K_t i within which a shaft at rest stays at rest (D-16, D-11). */
+  private holdMaxNm(): number {
+    const p = this.parameters;
+    return p.staticNm + p.constantNm + (p.activeOpposingNm > 0 ? p.activeOpposingNm : p.activeDrivingNm);
+  }
+
+  private holdMinNm(): number {
+    const p = this.parameters;
+    return -p.staticNm - p.constantNm + (p.activeOpposingNm > 0 ? p.activeDrivingNm : p.activeOpposingNm);
+  }
+
+  /** Decides about a shaft at w = 0: stays, or turns the way it is driven. Returns true if it sticks. */
+  settleShaft(): boolean {
+    const p = this.parameters;
+    if (p.isLocked) {
+      this.shaftSign = 0;
+      return true;
+    }
+    const torqueNm = p.torqueNmPerA * this.x[0]!;
+    const maxNm = this.holdMaxNm();
+    const minNm = this.holdMinNm();
+    if (maxNm > minNm && torqueNm <= maxNm && torqueNm >= minNm) {
+      this.shaftSign = 0;
+      return true;
+    }
+    this.shaftSign = torqueNm > maxNm || (maxNm <= minNm && torqueNm >= maxNm) ? 1 : -1;
+    return false;
+  }
+
+  /** Starts the state: shaft and source from the initial values, then the conduction state. */
+  begin(currentA: number, speedRadPerS: number, busV: number): void {
+    this.x[0] = currentA;
+    this.x[1] = speedRadPerS;
+    this.x[2] = busV;
+    if (speedRadPerS !== 0) this.shaftSign = Math.sign(speedRadPerS);
+    else this.settleShaft();
+    this.sourceConducts = this.parameters.acceptsReturn || busV <= this.parameters.sourceV;
+    this.resolve();
+  }
+
+  /**
+   * Finds the conduction state from gates and state, and enters its mode.
+   * Returns true if the current was cut to zero by an interruption (open winding, open shunt).
+   */
+  resolve(): boolean {
+    const { x, parameters: p } = this;
+    const found = this.resolver.resolve(p, this.gateA, this.gateB, x[0]!, x[1]!, x[2]!);
+    const { legA, legB, isCut } = found;
+    if (isCut || legA === LEG_OPEN || legB === LEG_OPEN) x[0] = 0;
+    this.enter(legA, legB);
+    return isCut;
+  }
+
+  /** Goes back into a mode whose legs are known (from a checkpoint). */
+  reenter(legA: number, legB: number): void {
+    this.enter(legA, legB);
+  }
+
+  private enter(legA: number, legB: number): void {
+    const key = ((legA * LEG_STATE_COUNT + legB) * 3 + this.shaftSign + 1) * 2 + (this.sourceConducts ? 1 : 0);
+    let slot = this.slots[key];
+    if (!slot) slot = this.slots[key] = new ModeSlot();
+    this.slot = slot;
+    if (slot.version !== this.version) {
+      slot.mode.legA = legA;
+      slot.mode.legB = legB;
+      slot.mode.shaftSign = this.shaftSign;
+      slot.mode.sourceConducts = this.sourceConducts;
+      this.fill(slot, this.x[1]!);
+    }
+    if (slot.mode.isCurrentAlgebraic) this.x[0] = rowAt(slot.mode.rows, ROW_CURRENT, this.x);
+  }
+
+  private fill(slot: ModeSlot, tangentSpeedRadPerS: number): void {
+    slot.version = this.version;
+    slot.senseStamp = -1;
+    this.fills++;
+    slot.tangentSpeedRadPerS = tangentSpeedRadPerS;
+    fillAffineMode(slot.mode, this.parameters, tangentSpeedRadPerS);
+    slot.spectrum.analyse(slot.mode);
+    slot.durations.fill(-1);
+    slot.next = 0;
+  }
+
+  /**
+   * Longest stretch from here over which the mode may be taken as affine, at most h: less only for fan loads (tangent)
+   * and rising friction (its middle value). Refills the mode where its tangent is off.
+   * @param sinceChangeS time since the parameters were set
+   */
+  prepare(h: number, sinceChangeS: number, periodS: number): number {
+    const p = this.parameters;
+    let stretchS = h;
+    if (p.coulombRateNmPerS !== 0 && this.shaftSign !== 0) {
+      // middle value over a sixteenth of a period: error of the speed below rate h^2/(8 J)
+      stretchS = Math.min(stretchS, periodS / 16);
+      this.version++;
+      const baseNm = p.coulombNm;
+      this.parameters = { ...p, coulombNm: baseNm + p.coulombRateNmPerS * (sinceChangeS + 0.5 * stretchS) };
+      this.enter(this.mode.legA, this.mode.legB);
+      this.parameters = p;
+      return stretchS;
+    }
+    if (p.fanNmPerRadPerS2 > 0 && this.shaftSign !== 0) {
+      const { a, b } = this.mode;
+      const speed = this.x[1]!;
+      const accel = a[3]! * this.x[0]! + a[4]! * speed + b[1]!;
+      // the tangent's torque error averages k dw^2/12: 1e-3 of the speed leaves 1e-7 of the torque
+      const changeMax = 1e-3 * Math.max(Math.abs(speed), 1e-2);
+      if (Math.abs(accel) * stretchS > changeMax) stretchS = Math.max(changeMax / Math.abs(accel), h / 64);
+      const middle = speed + 0.5 * accel * stretchS;
+      if (Math.abs(middle - this.slot.tangentSpeedRadPerS) > 1e-6 * Math.abs(middle) + 1e-9) {
+        this.slot.version = ++this.version;
+        this.fill(this.slot, middle);
+      }
+    }
+    return stretchS;
+  }
+
+  /** The operator of the present mode over h, from the mode's ring or built now. */
+  operator(h: number): Float64Array {
+    const { slot } = this;
+    const { durations } = slot;
+    for (let k = 0; k < RING; k++) if (durations[k] === h) return slot.operators[k]!;
+    const k = slot.next;
+    slot.next = k + 1 === RING ? 0 : k + 1;
+    durations[k] = h;
+    let operator = slot.operators[k];
+    if (!operator) operator = slot.operators[k] = new Float64Array(OPERATOR_LENGTH);
+    buildOperator(slot.mode, slot.spectrum, this.poles, h, operator);
+    this.operatorBuilds++;
+    return operator;
+  }
+
+  /** xEnd = state after the operator. */
+  apply(o: Float64Array): void {
+    const { x, xEnd } = this;
+    const x0 = x[0]!;
+    const x1 = x[1]!;
+    const x2 = x[2]!;
+    xEnd[0] = o[0]! * x0 + o[1]! * x1 + o[2]! * x2 + o[3]!;
+    xEnd[1] = o[4]! * x0 + o[5]! * x1 + o[6]! * x2 + o[7]!;
+    xEnd[2] = o[8]! * x0 + o[9]! * x1 + o[10]! * x2 + o[11]!;
+  }
+
+  /** Takes over xEnd as the state. */
+  commit(): void {
+    this.x[0] = this.xEnd[0]!;
+    this.x[1] = this.xEnd[1]!;
+    this.x[2] = this.xEnd[2]!;
+  }
+
+  /** Earliest event of the stage inside (0, h], given xEnd; -1 if none. The kind is left in `eventKind`. */
+  nextEvent(h: number): number {
+    const { mode } = this.slot;
+    const p = this.parameters;
+    this.eventKind = STAGE_NO_EVENT;
+    let firstS = -1;
+    if (isDiodeState(mode.legA) || isDiodeState(mode.legB)) {
+      const isForward = mode.legA === LEG_LOW_DIODE || mode.legB === LEG_HIGH_DIODE;
+      firstS = this.watch(STAGE_DIODE_ENDS, isForward ? 1 : -1, 0, 0, 0, h, firstS);
+    } else if (mode.isCurrentOpen && !p.isResistive) firstS = this.watchStart(h, firstS);
+    if (!p.isLocked) firstS = this.watchShaft(h, firstS);
+    if (!p.acceptsReturn && p.hasBusState) {
+      const sign = this.sourceConducts ? -1 : 1;
+      firstS = this.watch(STAGE_SOURCE, 0, 0, sign, -sign * p.sourceV, h, firstS);
+    }
+    if (firstS >= 0) this.crossings++;
+    return firstS;
+  }
+
+  private watchStart(h: number, firstS: number): number {
+    const { guard } = this;
+    const p = this.parameters;
+    for (let sign = 1; sign >= -1; sign -= 2) {
+      if (!this.resolver.startRow(p, sign, guard)) continue;
+      firstS = this.watch(STAGE_DIODE_STARTS, 0, -guard[1]!, -guard[2]!, -guard[3]!, h, firstS);
+    }
+    return firstS;
+  }
+
+  private watchShaft(h: number, firstS: number): number {
+    const p = this.parameters;
+    if (this.shaftSign !== 0) {
+      const hasFriction = p.coulombNm + p.constantNm > 0 || p.staticNm > 0 || p.activeOpposingNm !== p.activeDrivingNm || p.fanNmPerRadPerS2 > 0;
+      if (!hasFriction) return firstS;
+      // far from zero, by the larger of the two end slopes: spares nearly every interval the search
+      const { a, b } = this.slot.mode;
+      const { x, xEnd } = this;
+      const slope0 = Math.abs(a[3]! * x[0]! + a[4]! * x[1]! + b[1]!);
+      const slope1 = Math.abs(a[3]! * xEnd[0]! + a[4]! * xEnd[1]! + b[1]!);
+      const reach = 2 * h * (slope0 > slope1 ? slope0 : slope1);
+      if (this.shaftSign * x[1]! > reach && this.shaftSign * xEnd[1]! > 0) return firstS;
+      return this.watch(STAGE_SHAFT_ZERO, 0, this.shaftSign, 0, 0, h, firstS);
+    }
+    const k = p.torqueNmPerA;
+    const afterForward = this.watch(STAGE_BREAK_FORWARD, -k, 0, 0, this.holdMaxNm(), h, firstS);
+    return this.watch(STAGE_BREAK_REVERSE, k, 0, 0, -this.holdMinNm(), h, afterForward);
+  }
+
+  private watch(kind: number, c0: number, c1: number, c2: number, c3: number, h: number, firstS: number): number {
+    const { guard } = this;
+    guard[0] = c0;
+    guard[1] = c1;
+    guard[2] = c2;
+    guard[3] = c3;
+    const atS = firstDownCrossing(guard, this.slot.mode, this.slot.spectrum, this.x, this.xEnd, h);
+    if (atS < 0 || (firstS >= 0 && atS >= firstS)) return firstS;
+    this.eventKind = kind;
+    return atS;
+  }
+
+  /** Puts the state on the far side of the event found last and enters the new mode. */
+  applyEvent(): void {
+    const { x } = this;
+    switch (this.eventKind) {
+      case STAGE_DIODE_ENDS:
+        x[0] = 0;
+        break;
+      case STAGE_SHAFT_ZERO: {
+        x[1] = 0;
+        const before = this.shaftSign;
+        if (!this.settleShaft()) this.shaftSign = -before; // goes through
+        break;
+      }
+      case STAGE_BREAK_FORWARD:
+        this.shaftSign = 1;
+        break;
+      case STAGE_BREAK_REVERSE:
+        this.shaftSign = -1;
+        break;
+      case STAGE_SOURCE:
+        this.sourceConducts = !this.sourceConducts;
+        x[2] = this.parameters.sourceV;
+        break;
+      default: // STAGE_DIODE_STARTS: the resolution below finds the direction
+        break;
+    }
+    if (this.eventKind === STAGE_DIODE_STARTS) this.startDiodes();
+    else this.resolve();
+  }
+
+  /** At the located instant the start condition is at its limit; takes the side that the crossing says. */
+  private startDiodes(): void {
+    let sign = 1;
+    let best = -Infinity;
+    for (let s = 1; s >= -1; s -= 2) {
+      if (!this.resolver.startRow(this.parameters, s, this.guard)) continue;
+      const value = this.guard[1]! * this.x[1]! + this.guard[2]! * this.x[2]! + this.guard[3]!;
+      if (value > best) {
+        best = value;
+        sign = s;
+      }
+    }
+    this.resolver.startRow(this.parameters, sign, this.guard);
+    this.enter(this.resolver.result.legA, this.resolver.result.legB);
+  }
+}
