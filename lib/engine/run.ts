@@ -34,6 +34,8 @@ function assemble(document: ScenarioDocument, shunt: ShuntResistances, log: Even
   return { machine: new Machine(document, shunt, stage, bank, log), bank };
 }
 
+const ambientC = (document: ScenarioDocument) => document.sensing.ambientC ?? 25; // D-33
+
 /** Figures window: the document's, or the last 20 whole periods, or the run (D-24). */
 export function figuresWindow(document: ScenarioDocument): { fromS: number; toS: number } {
   const { run, pwm } = document;
@@ -67,7 +69,7 @@ export class Run {
 
   constructor(readonly document: ScenarioDocument, private readonly options: RunOptions = {}) {
     this.window = figuresWindow(document);
-    const ambientOhm = shuntAtTemperatureOhm(document, document.sensing.ambientC);
+    const ambientOhm = shuntAtTemperatureOhm(document, ambientC(document));
     this.shunt = { aOhm: ambientOhm, bOhm: ambientOhm };
     // self-heating needs the RMS currents first: one pass at ambient, then the run proper (D-33)
     this.isPreparing = document.sensing.shunt.thermalResistanceKPerW > 0 && document.sensing.shunt.tcrPpmPerK !== 0;
@@ -123,7 +125,7 @@ export class Run {
     if (!this.isPreparing) return true;
     const [rmsAA, rmsBA] = this.meter.shuntRmsA();
     const { resistanceOhm, thermalResistanceKPerW } = this.document.sensing.shunt;
-    const heated = (rmsA: number) => shuntAtTemperatureOhm(this.document, this.document.sensing.ambientC + thermalResistanceKPerW * resistanceOhm * rmsA * rmsA);
+    const heated = (rmsA: number) => shuntAtTemperatureOhm(this.document, ambientC(this.document) + thermalResistanceKPerW * resistanceOhm * rmsA * rmsA);
     this.shunt = { aOhm: heated(rmsAA), bOhm: heated(rmsBA) };
     this.isPreparing = false;
     this.set();

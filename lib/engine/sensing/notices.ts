@@ -16,7 +16,7 @@ const LOW_VOLTAGE_LIMIT_V = 60;
 export function noticesOf(document: ScenarioDocument, simulation: Simulation, monitor: RunMonitor): Notice[] {
   const notices = [
     ...sampleNotices(document, simulation),
-    ...outputNotices(document, simulation, monitor),
+    ...outputNotices(simulation, monitor),
     ...commonModeNotices(document, monitor),
     ...stageNotices(document, simulation, monitor),
     ...documentNotices(document),
@@ -62,7 +62,7 @@ function missReason(document: ScenarioDocument, worst: Conversion): string {
   return "The output has not settled at that instant, or is limited. Move the sample instant, or make the filter faster.";
 }
 
-function outputNotices(document: ScenarioDocument, simulation: Simulation, monitor: RunMonitor): Notice[] {
+function outputNotices(simulation: Simulation, monitor: RunMonitor): Notice[] {
   const notices: Notice[] = [];
   if (monitor.clippedFirstS !== null) {
     const share = monitor.clippedS / monitor.ranS;
