@@ -3,8 +3,8 @@ import { sql } from "drizzle-orm";
 import type { RootDatabase, Scope } from "@/db/client";
 import { MEMBER_ROLES, type MemberRole } from "@/lib/access/table";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
-import { TEMPLATES } from "@/lib/scenario/templates";
 import { hashToken } from "@/lib/server/tokens";
+import { SHORT_RUN } from "./short-run";
 
 /** Two workspaces of invented people, and ways to put scenarios and links into them, written by the owner of the tables. */
 export type World = {
@@ -18,12 +18,9 @@ export type World = {
   addLink: (maker: Scope, scenarioId: string, options?: { revisionNumber?: number | null; expiresInS?: number; isRevoked?: boolean }) => Promise<{ id: string; token: string }>;
 };
 
-/** A document with a run of one millisecond: quick to summarise. `dutyShift` makes documents differ. */
+/** A checked document with a run of one millisecond: quick to summarise. Title and voltage make documents differ. */
 export function shortDocument(title = "Sluice gate drive", voltageV = 24): ScenarioDocument {
-  const [template] = TEMPLATES;
-  if (!template) throw new Error("there are no templates");
-  const { window: _window, ...run } = template.document.run;
-  return { ...template.document, title, supply: { ...template.document.supply, voltageV }, run: { ...run, durationS: 1e-3 } };
+  return { ...SHORT_RUN, title, supply: { ...SHORT_RUN.supply, voltageV } };
 }
 
 export async function makeWorld(owner: RootDatabase): Promise<World> {
