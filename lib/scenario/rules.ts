@@ -5,6 +5,7 @@ import { readerOf, type Reader } from "./reader";
 import { DRIVE_RULES } from "./rules-drive";
 import { FAULT_RULES } from "./rules-faults";
 import { SENSING_RULES } from "./rules-sensing";
+import { TIME_RULES } from "./rules-times";
 import { formatQuantity } from "@/lib/units/format";
 
 /** A rule between fields: every place where a document breaks it. `code` is `rule.` and the rule's name. */
@@ -26,6 +27,6 @@ function belowFloor(root: unknown): Finding[] {
 /** Every rule that the value breaks, one finding for each path. */
 export function brokenRules(root: unknown): Finding[] {
   const read = readerOf(root);
-  const findings = [...DRIVE_RULES, ...SENSING_RULES, ...FAULT_RULES].flatMap((rule) => rule(read));
+  const findings = [...DRIVE_RULES, ...TIME_RULES, ...SENSING_RULES, ...FAULT_RULES].flatMap((rule) => rule(read));
   return [...belowFloor(root), ...findings];
 }

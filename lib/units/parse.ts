@@ -112,8 +112,9 @@ function bareNumber(number: string, exponent: number, unit: string, options: Par
     return accepted(plain, unit, options.range);
   const asShown = Number(`${number}e${exponent + power + asFactor(info.shown?.size ?? 1).power}`);
   if (!isInside(asShown, options.range) && isInside(plain, options.range)) {
+    const baseName = unit === "share" ? "parts of one" : unit;
     const shown = `${options.displayPrefix ?? ""}${info.shown?.symbol ?? unit}`;
-    return accepted(plain, unit, options.range, `Read in ${unit}, because in ${shown} it would be out of range.`);
+    return accepted(plain, unit, options.range, `Read in ${baseName}, because in ${shown} it would be out of range.`);
   }
   return accepted(asShown, unit, options.range);
 }
@@ -152,7 +153,7 @@ export function parseQuantity(text: string, unit: string, options: ParseOptions 
     return {
       ok: false,
       code: "unit",
-      text: `"${letters.slice(0, 24)}" is not ${unit === "" ? "expected here" : `a way to write ${unit}`}.`,
+      text: `"${letters.slice(0, 24)}" is not ${unit === "" ? "expected here" : `a way to write ${unit === "share" ? "%" : unit}`}.`,
     };
   const value = Number(`${signed}e${exponent + factor.power}`) * factor.factor;
   return Number.isFinite(value) ? accepted(value, unit, options.range) : refusal;

@@ -15,6 +15,8 @@ const PLAIN: UnitInfo = { takesPrefix: false, names: [] };
 
 export const UNITS: Readonly<Record<string, UnitInfo>> = {
   "": { takesPrefix: false, names: ["1"], others: { "%": 0.01 } },
+  /** A fraction of one, stored as such and shown in per cent. */
+  share: { takesPrefix: false, names: [], shown: { symbol: "%", size: 0.01 } },
   V: { takesPrefix: true, names: ["volt", "volts"] },
   A: { takesPrefix: true, names: ["amp", "amps", "ampere", "amperes"] },
   Ω: { takesPrefix: true, names: ["Ω", "ohm", "ohms", "R"] },
