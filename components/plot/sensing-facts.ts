@@ -7,7 +7,7 @@ export type SensingFacts = {
   isLegSite: boolean;
   /** legBottom: the pair is crossed, so that forward is always up. */
   differenceLabel: string;
-  arrangement: ScenarioDocument["sensing"]["arrangement"];
+  arrangement: ScenarioDocument["sensing"]["amplifier"]["arrangement"];
   shuntOhm: number;
   gainRatio: number;
   referenceV: number | null;
@@ -30,8 +30,8 @@ const MISS_LSB_COUNT = 3;
 type Sensing = ScenarioDocument["sensing"];
 
 function readingTraceOf(sensing: Sensing): TraceName {
-  if (sensing.arrangement === "combinedMidscale" || sensing.arrangement === "bipolarMidscale") return "combinedV";
-  return sensing.arrangement === "differencePair" ? "differenceV" : "outAV";
+  if (sensing.amplifier.arrangement === "combinedMidscale" || sensing.amplifier.arrangement === "bipolarMidscale") return "combinedV";
+  return sensing.amplifier.arrangement === "differencePair" ? "differenceV" : "outAV";
 }
 
 export const gainOf = (gain: Sensing["amplifier"]["gain"]): number => ("fixed" in gain ? gain.fixed : gain.outOhm / gain.inOhm);
@@ -39,7 +39,7 @@ export const gainOf = (gain: Sensing["amplifier"]["gain"]): number => ("fixed" i
 export function readSensing(document: ScenarioDocument): SensingFacts {
   const { sensing } = document;
   const { amplifier, converter } = sensing;
-  const isMidscale = sensing.arrangement === "combinedMidscale" || sensing.arrangement === "bipolarMidscale";
+  const isMidscale = sensing.amplifier.arrangement === "combinedMidscale" || sensing.amplifier.arrangement === "bipolarMidscale";
   const referenceV = sensing.reference?.voltageV ?? null;
   const voltPerAmpere = gainOf(amplifier.gain) * sensing.shunt.resistanceOhm;
   const topV = Math.min(amplifier.outputMaxV, converter.fullScaleV);
@@ -50,7 +50,7 @@ export function readSensing(document: ScenarioDocument): SensingFacts {
     site: sensing.site,
     isLegSite: sensing.site === "legTop" || sensing.site === "legBottom",
     differenceLabel: sensing.site === "legBottom" ? "B − A" : "A − B",
-    arrangement: sensing.arrangement,
+    arrangement: sensing.amplifier.arrangement,
     shuntOhm: sensing.shunt.resistanceOhm,
     gainRatio: gainOf(amplifier.gain),
     referenceV,
