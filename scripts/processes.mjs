@@ -4,12 +4,14 @@ import { closeSync, openSync, readFileSync, readlinkSync } from "node:fs";
 import { setTimeout as wait } from "node:timers/promises";
 
 const live = new Set();
+let isClosed = false;
 
 /**
  * Starts a program. `log` (a file) takes what it prints; without it the terminal does. `ended` settles with { code, signal }.
  * What `outlivesUs` is left alone when this process is stopped in a hurry.
  */
 export function launch(command, args, { log, append = false, outlivesUs = false, ...options } = {}) {
+  if (isClosed) throw new Error(`${command} is not started: we are stopping`);
   const output = log ? openSync(log, append ? "a" : "w", 0o600) : "inherit";
   const child = spawn(command, args, { stdio: ["ignore", output, output], detached: true, ...options });
   if (log) closeSync(output);
@@ -54,8 +56,9 @@ export async function endGroup(child, patienceMs = 5_000) {
   }
 }
 
-/** Ends what is still running, at once. For steps that can be done again: an installation, a build, a test run. */
+/** Ends what is still running, at once, and starts nothing more. For steps that can be done again: an installation, a build, a test run. */
 export function killAll() {
+  isClosed = true;
   for (const child of live) if (child.pid !== undefined) signalGroup(child, "SIGKILL");
 }
 

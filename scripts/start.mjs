@@ -69,18 +69,18 @@ async function startDatabase(secrets) {
 
 /** Starts a part and starts it again when it ends by itself; gives up, and stops all, when that happens too often. */
 async function keepRunning(name, begin, endings = []) {
-  const begun = begin();
+  const begun = begin().then((part) => (running[name] = part));
   beginning.add(begun);
-  running[name] = await begun.finally(() => beginning.delete(begun));
+  await begun.finally(() => beginning.delete(begun));
   running[name].ended.then(async (how) => {
     if (isStopping) return;
     const recent = [...endings.filter((at) => at > Date.now() - 60_000), Date.now()];
     const reason = how?.signal ?? (how?.code === undefined ? "" : `exit code ${how.code}`);
-    say(`The ${name} ended by itself${reason && ` (${reason})`}; see ${logFolder}.`);
+    say(`The ${name} server ended by itself${reason && ` (${reason})`}; see ${logFolder}.`);
     if (recent.length > RESTARTS_PER_MINUTE) return stop(1);
     try {
       await keepRunning(name, begin, recent);
-      say(`The ${name} runs again.`);
+      say(`The ${name} server runs again.`);
     } catch (error) {
       reportFailure(error);
       await stop(1);
