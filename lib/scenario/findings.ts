@@ -2,6 +2,7 @@ import type { z } from "zod";
 import type { Finding } from "@/lib/result";
 import { formatQuantity, formatRange } from "@/lib/units/format";
 import { nameOf } from "./names";
+import { getAt } from "./paths";
 import { LENGTHS, rangeOf, type Range } from "./ranges";
 import { FAULT_KINDS, LOAD_KINDS } from "./kinds";
 
@@ -12,17 +13,6 @@ const VALUES_MAX = 20_000; // a full document (200 points, 200 specials, 200 sha
 const FINDINGS_MAX = 500;
 
 const isObject = (value: unknown): value is Record<string, unknown> => typeof value === "object" && value !== null;
-
-/** The value at a path such as `command.points.3.duty`; own fields only. */
-export function valueAt(root: unknown, path: string): unknown {
-  let value = root;
-  if (path === "") return value;
-  for (const key of path.split(".")) {
-    if (!isObject(value) || !Object.hasOwn(value, key)) return undefined;
-    value = value[key];
-  }
-  return value;
-}
 
 /** A finding for a value too deep or too large to be a scenario (cyclic ones too), found without walking all of it. */
 export function tooLarge(root: unknown): Finding | undefined {
@@ -48,7 +38,7 @@ export function tooLarge(root: unknown): Finding | undefined {
 /** The range at a path, with the kind of the fault that it lies in. */
 export function rangeAt(path: string, root: unknown): Range | undefined {
   const fault = /^faults\.\d+(?=\.)/.exec(path);
-  const kind = fault ? valueAt(root, `${fault[0]}.kind`) : undefined;
+  const kind = fault ? getAt(root, `${fault[0]}.kind`) : undefined;
   return rangeOf(path, typeof kind === "string" ? kind : undefined);
 }
 
@@ -115,7 +105,7 @@ function branchIssues(issue: Issue & { code: "invalid_union" }, value: unknown):
 function fromIssue(issue: Issue, root: unknown, base: PropertyKey[]): Finding[] {
   const keys = [...base, ...issue.path];
   const path = keys.map(String).join(".");
-  const value = valueAt(root, path);
+  const value = getAt(root, path);
   if (issue.code === "unrecognized_keys") {
     return issue.keys.map((key) => ({
       path: path === "" ? key : `${path}.${key}`,

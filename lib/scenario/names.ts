@@ -1,3 +1,4 @@
+import { generalPath } from "./paths";
 import { rangeOf } from "./ranges";
 
 /** Words for the fields that are no numbers; numbers have theirs in ranges.ts. */
@@ -58,7 +59,7 @@ const NAMES: Readonly<Record<string, string>> = {
 
 /** What a field is called, in sentence case, without its place in a list. */
 export function nameOf(path: string, faultKind?: string): string {
-  const general = path.replace(/\.\d+(?=\.|$)/g, ".*");
+  const general = generalPath(path);
   const word = Object.hasOwn(NAMES, general) ? NAMES[general] : undefined;
   return word ?? rangeOf(path, faultKind)?.name ?? `Field ${path.split(".").at(-1)}`;
 }

@@ -1,3 +1,5 @@
+import { generalPath } from "./paths";
+
 /**
  * The one table of every number of a scenario document: name in trade terms, unit, hard limits, default.
  * The schema, the texts of refusals, the inputs panel and the notices read it; nothing else states a limit.
@@ -228,7 +230,7 @@ export const SHAFT_UNITS = {
 
 /** `command.points.3.duty` -> the entry of `command.points.*.duty`; two faults share the field `voltageV`. */
 export function rangeOf(path: string, faultKind?: string): Range | undefined {
-  const general = path.replace(/\.\d+(?=\.|$)/g, ".*");
+  const general = generalPath(path);
   if (general === "faults.*.voltageV") return RANGES[faultKind === "supplySag" ? "faults.*.sagV" : "faults.*.stuckV"];
   return Object.hasOwn(RANGES, general) ? RANGES[general] : undefined;
 }

@@ -1,4 +1,4 @@
-import { valueAt } from "./findings";
+import { getAt } from "./paths";
 import { rangeOf } from "./ranges";
 
 /**
@@ -17,23 +17,23 @@ export type Reader = {
 export function readerOf(root: unknown): Reader {
   return {
     number(path) {
-      const value = valueAt(root, path);
+      const value = getAt(root, path);
       const range = rangeOf(path);
       if (value === undefined) return range?.fallback;
       return typeof value === "number" && Number.isFinite(value) ? value : undefined;
     },
     word(path) {
-      const value = valueAt(root, path);
+      const value = getAt(root, path);
       return typeof value === "string" ? value : undefined;
     },
     flag(path, fallback) {
-      const value = valueAt(root, path);
+      const value = getAt(root, path);
       if (value === undefined) return fallback;
       return typeof value === "boolean" ? value : undefined;
     },
-    has: (path) => valueAt(root, path) !== undefined,
+    has: (path) => getAt(root, path) !== undefined,
     count(path) {
-      const value = valueAt(root, path);
+      const value = getAt(root, path);
       return Array.isArray(value) ? value.length : 0;
     },
   };

@@ -1,5 +1,5 @@
 import type { Finding } from "@/lib/result";
-import { valueAt } from "./findings";
+import { getAt } from "./paths";
 import { RANGES } from "./ranges";
 import { readerOf, type Reader } from "./reader";
 import { DRIVE_RULES } from "./rules-drive";
@@ -15,7 +15,7 @@ export type Rule = (read: Reader) => Finding[];
 function belowFloor(root: unknown): Finding[] {
   const findings: Finding[] = [];
   for (const [path, range] of Object.entries(RANGES)) {
-    const value = range.floor === undefined ? undefined : valueAt(root, path);
+    const value = range.floor === undefined ? undefined : getAt(root, path);
     if (typeof value !== "number" || !(value > 0) || value >= range.floor!) continue;
     const { name, unit, floor, max } = range;
     const text = `${name} is ${formatQuantity(value, unit).text}; enter 0, or ${formatQuantity(floor!, unit).text} to ${formatQuantity(max, unit).text}.`;
