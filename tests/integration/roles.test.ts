@@ -68,7 +68,7 @@ describe("through bare SQL of the application's role", () => {
 
   it.each(cells)("$role, $deed, $kind: $isExpected", async ({ role, deed, kind, isExpected: expected }) => {
     const target = await makeTarget(role, kind);
-    expect(await tryBare(world.scopes[role], role, deed, target)).toBe(expected);
+    expect(await tryBare(world.scopes[role], deed, target)).toBe(expected);
   });
 
   it("finds nothing at all when nobody acts", async () => {
@@ -86,7 +86,7 @@ describe("through bare SQL of the application's role", () => {
       const target = await makeTarget(role, "foreign");
       const claim: Scope = { ...world.scopes[role], workspaceId: world.foreigner.workspaceId };
       for (const deed of DEEDS.filter((one) => one !== "link.open" && THROUGH_BARE_SQL[one])) {
-        expect(await tryBare(claim, role, deed, target), `${role} ${deed}`).toBe(false);
+        expect(await tryBare(claim, deed, target), `${role} ${deed}`).toBe(false);
       }
     }
   });
@@ -100,7 +100,7 @@ function isExpectedInSql(role: MemberRole, deed: Deed, kind: Kind): boolean {
   return can(role, deed, thingOf(kind));
 }
 
-async function tryBare(scope: Scope, role: Role, deed: Deed, target: Target): Promise<boolean> {
+async function tryBare(scope: Scope, deed: Deed, target: Target): Promise<boolean> {
   const attempt = THROUGH_BARE_SQL[deed];
   if (!attempt) throw new Error(`${deed} has no statement`);
   if (deed === "scenario.restore") await database.owner.db.execute(sql`update scenarios set archived_at = now() where id = ${target.scenarioId}`);
