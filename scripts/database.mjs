@@ -47,5 +47,8 @@ async function runDatabaseProgram(name, urls) {
   const log = join(logFolder, `${name}.log`);
   const args = [...watchedNode, "--import", "tsx", `db/${name}.ts`];
   const code = await run(process.execPath, args, { cwd: root, env: { ...process.env, ...urls }, log });
-  if (code !== 0) throw new Refusal(`db/${name}.ts failed (whole log: ${log}):\n${tailOf(log)}`);
+  if (code === 0) return;
+  const printed = tailOf(log);
+  const hint = /permission denied to create role/.test(printed) ? "\n\nThe owner of the database must be able to make roles; README.md says what to do where it may not." : "";
+  throw new Refusal(`db/${name}.ts failed (whole log: ${log}):\n${printed}${hint}`);
 }

@@ -1,6 +1,6 @@
 // Finds PostgreSQL and Chromium on this machine; as root on a Debian-like system, installs what is missing.
 import { execFileSync } from "node:child_process";
-import { existsSync, mkdirSync, readdirSync, rmSync, writeFileSync } from "node:fs";
+import { accessSync, constants, existsSync, mkdirSync, readdirSync, rmSync, writeFileSync } from "node:fs";
 import { delimiter, join } from "node:path";
 import { Refusal, say, step, tailOf } from "./messages.mjs";
 import { logFolder } from "./paths.mjs";
@@ -39,7 +39,16 @@ export function findPostgresServers() {
 export function findChromium() {
   const names = ["chromium", "chromium-browser", "google-chrome-stable", "google-chrome"];
   const candidates = [process.env.SLACKWATER_CHROMIUM, ...onPath().flatMap((folder) => names.map((name) => join(folder, name)))];
-  return candidates.find((file) => file && existsSync(file)) ?? null;
+  return candidates.find((file) => file && isProgram(file)) ?? null;
+}
+
+function isProgram(file) {
+  try {
+    accessSync(file, constants.X_OK);
+    return true;
+  } catch {
+    return false; // not there, or not a program
+  }
 }
 
 /** Makes sure the programs are there. `wanted` holds "postgresql", "chromium" or both. */
