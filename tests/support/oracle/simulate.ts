@@ -15,6 +15,8 @@ export type OracleResult = {
   samples: Conversion[];
   events: OracleEvent[];
   clipIntervals: [number, number][];
+  /** Largest magnitudes of the whole run. */
+  fullScale: { currentA: number; speedRadPerS: number; bridgeA: number };
 };
 
 const WORDS: Record<Condition, LegState> = {
@@ -75,12 +77,19 @@ const runOnce = (document: ScenarioDocument, times: number[], shuntC: [number, n
   const at = new Map<number, InstantReading>();
   const clips = createClipRecord();
   const range = windowOf(document);
+  const fullScale = { currentA: 0, speedRadPerS: 0, bridgeA: 0 };
   let parts: { window: ReturnType<typeof createWindow>; converter: ReturnType<typeof createConverter> } | null = null;
   const make = (run: Run): Observer => {
     const window = createWindow(run, range);
     const converter = createConverter(run, range);
     parts = { window, converter };
     let currentSign = 0;
+    const look = (now: Run): void => {
+      const { electric } = snapshot(now.mode, now.timeS, now.y);
+      fullScale.currentA = Math.max(fullScale.currentA, Math.abs(electric.currentA));
+      fullScale.bridgeA = Math.max(fullScale.bridgeA, Math.abs(electric.bridgeA));
+      fullScale.speedRadPerS = Math.max(fullScale.speedRadPerS, Math.abs(now.y[1] ?? 0));
+    };
     return {
       stopsS: [...times, range.fromS, range.toS, ...converter.stopsS],
       onStop: (now, timeS) => {
@@ -96,7 +105,10 @@ const runOnce = (document: ScenarioDocument, times: number[], shuntC: [number, n
         if (currentSign !== 0 && sign !== currentSign) now.events.push({ timeS: now.timeS, kind: "currentZero" });
         currentSign = sign;
       },
-      onChange: (now) => window.onChange(now),
+      onChange: (now) => {
+        window.onChange(now);
+        look(now);
+      },
     };
   };
   const run = runDocument(document, shuntC, make);
@@ -110,6 +122,7 @@ const runOnce = (document: ScenarioDocument, times: number[], shuntC: [number, n
     samples,
     events: [...run.events].sort((x, y) => x.timeS - y.timeS),
     clipIntervals: clips.intervals,
+    fullScale,
     railRms: window.railRms(),
   };
 };
