@@ -1,14 +1,15 @@
 import { pathToFileURL } from "node:url";
 import { sql } from "drizzle-orm";
-import { DEMO_ACCOUNTS, DEMO_PASSWORD, DEMO_WORKSPACES } from "@/lib/access/demo-accounts";
+import { DEMO_ACCOUNTS, DEMO_PASSWORD, DEMO_WORKSPACES, type DemoAccount } from "@/lib/access/demo-accounts";
 import { parseScenario, type ScenarioDocument } from "@/lib/scenario/schema";
 import { TEMPLATES } from "@/lib/scenario/templates";
 import { hashPassword } from "@/lib/server/passwords";
 import { summarise } from "@/lib/server/summary";
 import { hashToken } from "@/lib/server/tokens";
 import { connect, type RootDatabase } from "./client";
-import { demoKey, demoShareToken } from "./seed/keys";
-import { EXTRAS, LINKS, STORIES, type Story } from "./seed/stories";
+import type { RunSummary } from "./schema/index";
+import { demoKey, demoShareToken } from "./demo/keys";
+import { EXTRAS, LINKS, STORIES, type Story } from "./demo/stories";
 
 /**
  * The demo: a waterworks team with people in every role, a second team, scenarios with histories, links of every kind. Also
@@ -63,7 +64,7 @@ async function addScenario(db: RootDatabase, { key, title, document, story, hour
 
   const final = { ...document, title };
   const steps = [...story.steps, { author: story.owner, message: story.finalMessage, edit: (same: ScenarioDocument) => same }];
-  const revisions = [];
+  const revisions: { number: number; author: DemoAccount; message: string; document: ScenarioDocument; summary: RunSummary | null; hoursAgo: number }[] = [];
   for (const [index, step] of steps.entries()) {
     const checked = requireValid(step.edit(final), `${title}, revision ${index + 1}`);
     const author = DEMO_ACCOUNTS.find((account) => account.email === step.author)!;
