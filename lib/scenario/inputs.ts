@@ -61,3 +61,8 @@ export function inputValue(input: Pick<Input, "path" | "kind">, document: Scenar
   const value = getAt(document, input.path);
   return input.kind === "part" ? value !== undefined : value;
 }
+
+/** The table's own words, so that a panel needs one import. */
+export type { ChoiceInput, FlagInput, Input, PartInput, QuantityInput, SectionId, Slider } from "./input-types";
+export { SECTIONS } from "./input-types";
+export { choicesAt, choiceLabel, type Choice } from "./choices";
