@@ -5,6 +5,7 @@ import { SensorBank } from "./sensing/bank";
 import { SensingChain } from "./sensing/chain";
 import { Sampler } from "./sensing/converter";
 import { FigureMeter } from "./sensing/figures";
+import { PeriodLeaper } from "./sensing/leap";
 import { RunMonitor } from "./sensing/monitor";
 import { noticesOf } from "./sensing/notices";
 import { InstantReader } from "./sensing/readings";
@@ -15,8 +16,10 @@ import { PowerStage } from "./solver/power-stage";
 import type { Observer } from "./solver/rider";
 
 const SAMPLES_KEPT = 8192; // D-55
-const CHECKPOINT_COUNT = 1024;
-const OVERVIEW_COLUMNS = 4096;
+/** Cells of the run's grid: a checkpoint and a column of the overview each. */
+const GRID_CELLS = 1024;
+/** Runs with cells of up to this many periods are short: they run in detail throughout. */
+const LEAST_CELL_PERIODS = 4;
 /** Views of up to this many periods are drawn from exact break points, wider ones as envelopes. */
 const EXACT_PERIODS_MAX = 400;
 /** Views of up to this many periods are computed anew for their columns, wider ones come from the run's own columns. */
@@ -56,11 +59,13 @@ export class Run {
   private meter!: FigureMeter;
   private sampler!: Sampler;
   private monitor!: RunMonitor;
-  private reader: InstantReader | null = null;
+  private leaper!: PeriodLeaper;
+  private firstMeasured = 0;
+  private lastMeasured = 0;
   private overview: EnvelopeRecorder | null = null;
   private shunt: ShuntResistances;
   private readonly checkpoints: Checkpoint[] = [];
-  private readonly checkpointStep: number;
+  private readonly gridStep: number;
   private readonly window: { fromS: number; toS: number };
   private isPreparing: boolean;
   private status: RunStatus = "reached-end";
@@ -71,10 +76,10 @@ export class Run {
     this.window = figuresWindow(document);
     const ambientOhm = shuntAtTemperatureOhm(document, ambientC(document));
     this.shunt = { aOhm: ambientOhm, bOhm: ambientOhm };
+    this.gridStep = Math.max(Math.ceil(Math.ceil(document.run.durationS * document.pwm.frequencyHz - 1e-9) / GRID_CELLS), 1);
     // self-heating needs the RMS currents first: one pass at ambient, then the run proper (D-33)
     this.isPreparing = document.sensing.shunt.thermalResistanceKPerW > 0 && document.sensing.shunt.tcrPpmPerK !== 0;
     this.set();
-    this.checkpointStep = Math.max(Math.ceil(this.machine.periodCount / CHECKPOINT_COUNT), 1);
   }
 
   private set(): void {
@@ -83,25 +88,33 @@ export class Run {
     ({ machine: this.machine, bank: this.bank } = assemble(document, this.shunt, this.log));
     const { machine, bank, window } = this;
     this.meter = new FigureMeter(machine, bank, window.fromS, window.toS);
-    const firstPeriod = Math.max(Math.floor(window.fromS * machine.frequencyHz + 1e-9) - Sampler.leadPeriods(document), 0);
-    this.sampler = new Sampler(machine, bank, firstPeriod);
+    this.firstMeasured = Math.max(Math.floor(window.fromS * machine.frequencyHz + 1e-9) - Sampler.leadPeriods(document), 0);
+    this.sampler = new Sampler(machine, bank, this.firstMeasured);
     this.sampler.onConversion = (conversion) => this.meter.addConversion(conversion);
     this.monitor = new RunMonitor(machine, bank, this.log);
     const always: Observer[] = [...machine.observers, this.monitor];
     if (!this.isPreparing) {
-      if (this.options.at) always.push((this.reader = new InstantReader(machine, bank, this.options.at)));
-      if (this.options.traces) always.push((this.overview = new EnvelopeRecorder(machine, bank, 0, document.run.durationS, OVERVIEW_COLUMNS)));
+      if (this.options.traces) always.push((this.overview = this.makeOverview()));
     }
     // conversions and figures cost nothing outside their stretch of the run
     const measuring = [...always, this.sampler, this.meter];
-    const lastPeriod = Math.ceil(window.toS * machine.frequencyHz + 1e-9);
+    this.lastMeasured = Math.ceil(window.toS * machine.frequencyHz + 1e-9);
     const edges = this.meter.edges();
     machine.pointsOfPeriod = (period) => {
-      machine.observers = period >= firstPeriod && period <= lastPeriod ? measuring : always;
+      machine.observers = period >= this.firstMeasured && period <= this.lastMeasured ? measuring : always;
       return pointsOf(machine, period, this.sampler, edges);
     };
     machine.onPoint = (offsetS) => this.sampler.reach(offsetS);
     machine.begin();
+    this.leaper = new PeriodLeaper(machine, bank, this.monitor);
+  }
+
+  /** A column per cell of the grid, or finer for runs that are short enough to run in detail throughout. */
+  private makeOverview(): EnvelopeRecorder {
+    const { machine, bank, document } = this;
+    if (this.gridStep <= LEAST_CELL_PERIODS) return new EnvelopeRecorder(machine, bank, 0, document.run.durationS, 4 * GRID_CELLS);
+    const columnCount = Math.ceil(machine.periodCount / this.gridStep);
+    return new EnvelopeRecorder(machine, bank, 0, (columnCount * this.gridStep) / machine.frequencyHz, columnCount);
   }
 
   /** Share of the whole work done, 0 to 1. */
@@ -111,14 +124,15 @@ export class Run {
     return this.isPreparing ? share / 2 : 0.5 + share / 2;
   }
 
-  /** Runs up to `periodCount` periods more; true when there is nothing left to run. */
+  /** Runs up to about `periodCount` periods more; true when there is nothing left to run. */
   advance(periodCount: number): boolean {
     const { machine } = this;
-    for (let n = 0; n < periodCount; n++) {
+    const untilPeriod = machine.period + periodCount;
+    while (machine.period < untilPeriod && machine.period < machine.periodCount) {
       if (this.status !== "reached-end") return true;
-      if (machine.period >= machine.periodCount) break;
-      if (!this.isPreparing && machine.period > 0 && machine.period % this.checkpointStep === 0) this.checkpoints.push(machine.save());
-      machine.runPeriod();
+      const isCellStart = machine.period % this.gridStep === 0;
+      if (isCellStart && machine.period > 0 && !this.isPreparing) this.checkpoints.push(machine.save());
+      if (isCellStart || this.gridStep <= LEAST_CELL_PERIODS || this.leaper.leap(this.leapLimit()) === 0) machine.runPeriod();
       if (!this.isFinite()) return true;
     }
     if (machine.period < machine.periodCount) return false;
@@ -130,6 +144,17 @@ export class Run {
     this.isPreparing = false;
     this.set();
     return false;
+  }
+
+  /**
+   * First period from here that must run in detail: the first two of each grid cell (checkpoint, envelope) and those that
+   * are measured. It depends on the document alone, so that every caller gets the same numbers to the bit.
+   */
+  private leapLimit(): number {
+    const { period } = this.machine;
+    if (period % this.gridStep < 2 || (period >= this.firstMeasured && period <= this.lastMeasured)) return period;
+    const cellEnd = (Math.floor(period / this.gridStep) + 1) * this.gridStep;
+    return period < this.firstMeasured ? Math.min(cellEnd, this.firstMeasured) : cellEnd;
   }
 
   private isFinite(): boolean {
@@ -152,7 +177,7 @@ export class Run {
       statusText: this.statusText,
       durationS: this.document.run.durationS,
       window: this.window,
-      at: this.status === "reached-end" ? (this.reader?.finish() ?? []) : [],
+      at: this.status === "reached-end" && this.options.at ? this.readAt(this.options.at) : [],
       events: withSampleEvents(log.events, samples),
       eventCounts: { ...log.counts, ...(samples.length > 0 ? { sample: samples.length } : {}) },
       samples: samples.slice(0, SAMPLES_KEPT),
@@ -171,7 +196,7 @@ export class Run {
     const { document } = this;
     const period = Math.min(Math.max(Math.floor(timeS * this.machine.frequencyHz) - leadPeriods, 0), this.machine.periodCount - 1);
     let saved: Checkpoint | null = null;
-    const index = Math.min(Math.floor(period / this.checkpointStep), this.checkpoints.length);
+    const index = Math.min(Math.floor(period / this.gridStep), this.checkpoints.length);
     if (index > 0) saved = this.checkpoints[index - 1]!;
     let assembly = this.replay;
     if (!assembly || !saved) assembly = assemble(document, this.shunt, null);
@@ -235,7 +260,7 @@ export class Run {
     while (from < order.length) {
       // instants closer than two checkpoints share one stretch
       let to = from + 1;
-      const stretchS = (2 * this.checkpointStep + 8) / this.machine.frequencyHz;
+      const stretchS = (2 * this.gridStep + 8) / this.machine.frequencyHz;
       while (to < order.length && times[order[to]!]! - times[order[to - 1]!]! < stretchS) to++;
       const part = order.slice(from, to);
       const { machine, bank } = this.rewind(times[part[0]!]!, 1);

@@ -3,7 +3,7 @@ import { isHighState, isLowState, LEG_THROUGH } from "../model/legs";
 import type { EventLog } from "../solver/event-log";
 import { bracketedRoot } from "../solver/locate";
 import { AT_POLE1, AT_POLE2, buildOperator, OPERATOR_LENGTH } from "../solver/operator";
-import type { ModeSlot, PowerStage } from "../solver/power-stage";
+import { PIECE_LENGTH, PIECE_RIDER_EVENT, PIECE_START, type ModeSlot, type PowerStage } from "../solver/power-stage";
 import type { Rider } from "../solver/rider";
 import { stateAfter } from "../solver/spectrum";
 import { NODE_COUNT, nodeWeights, polynomialAt, segmentResponse, toMonomials } from "./cascade";
@@ -48,10 +48,14 @@ export class SensorBank implements Rider {
   private readonly target = new Float64Array(2);
   private readonly slewing = new Int8Array(3);
   private readonly base = new Float64Array(3);
+  private readonly rawEnds = new Float64Array(4);
   private readonly inputMin = new Float64Array(3);
   private readonly inputMax = new Float64Array(3);
   private readonly nodes = new Float64Array(2 * NODE_COUNT);
-  private readonly response = new Float64Array(4);
+  /** Response of each output to its input, one pole and both. */
+  private readonly response = new Float64Array(6);
+  /** Length of the stretch being computed, s. */
+  private readonly lengthS = new Float64Array(1);
   private readonly monomials = new Float64Array(NODE_COUNT);
   private readonly weightDurations = new Float64Array(WEIGHT_RING).fill(-1);
   private readonly weights = Array.from({ length: WEIGHT_RING }, () => new Float64Array(2 * NODE_COUNT));
@@ -60,7 +64,6 @@ export class SensorBank implements Rider {
   private readonly node = new Float64Array(3);
   private readonly ramp = new Float64Array(6);
   private wasClipped = false;
-  private startS = 0;
 
   constructor(readonly chain: SensingChain, document: ScenarioDocument, public log: EventLog | null) {
     this.isUsed[1] = chain.isLegSite;
@@ -135,37 +138,42 @@ export class SensorBank implements Rider {
     if (this.chain.commutationS === 0 || currentBeforeA === 0 || stage.x[0] === 0 || state === LEG_THROUGH) this.share[leg] = target;
   }
 
-  pieceLimit(stage: PowerStage, h: number): number {
+  limitPiece(stage: PowerStage): void {
     const { share, target, chain } = this;
     this.isRamp = share[0] !== target[0] || share[1] !== target[1];
-    if (!this.isRamp) return h;
+    if (!this.isRamp) return;
     let rest = Infinity;
     for (let leg = 0; leg < 2; leg++) {
       if (share[leg] !== target[leg]) rest = Math.min(rest, Math.abs(target[leg]! - share[leg]!) * chain.commutationS);
     }
     const piecesCount = Math.min(Math.ceil((stage.slot.spectrum.rateMaxPerS * rest) / RAMP_RATE), RAMP_PIECES_MAX);
     if (piecesCount > 1) rest /= piecesCount;
-    return Math.min(h, rest);
+    if (rest < stage.piece[PIECE_LENGTH]!) stage.piece[PIECE_LENGTH] = rest;
   }
 
   /* ---------------------------------------------------- one piece -------------------------------------------------- */
 
-  attempt(stage: PowerStage, operator: Float64Array, h: number, startS: number): number {
-    this.startS = startS;
+  attempt(stage: PowerStage): boolean {
+    const operator = stage.stepOperator;
+    const h = stage.piece[PIECE_LENGTH]!;
+    this.lengthS[0] = h;
     const sense = this.rows(stage.slot);
     const hasSlew = this.chain.slewVPerS !== Infinity;
     if (this.isRamp) this.fillNodes(stage, sense, h);
     const isSteady = this.boundInputs(stage, sense);
     if (hasSlew) this.classifySlew(stage, sense);
-    if (isSteady && !hasSlew && this.staysInside()) {
+    this.isRegular = isSteady && !hasSlew && this.staysInside();
+    if (this.isRegular) {
       this.clip[0] = this.clip[1] = this.clip[2] = 0;
-      this.compute(stage, sense, operator, h, true);
-      return -1;
+      this.compute(stage, sense, operator, true);
+      return false;
     }
-    this.compute(stage, sense, operator, h, true);
+    this.compute(stage, sense, operator, true);
     // the clip class needs z at the end, which no clip changes; y does when the filter follows a clipped pin
-    if (this.classifyClips() && this.holdsPin) this.compute(stage, sense, operator, h, true);
-    return this.firstEvent(stage, sense, h);
+    if (this.classifyClips() && this.holdsPin) this.compute(stage, sense, operator, true);
+    const eventS = this.firstEvent(stage, sense, h);
+    stage.piece[PIECE_RIDER_EVENT] = eventS;
+    return eventS >= 0;
   }
 
   /** No output can reach a limit in this piece. */
@@ -205,25 +213,22 @@ export class SensorBank implements Rider {
     }
   }
 
-  /** zEnd, yEnd after h from the present state, with the classes as they stand. */
-  private compute(stage: PowerStage, sense: Float64Array, o: Float64Array, h: number, hasNodes: boolean): void {
+  /** zEnd, yEnd after `lengthS` from the present state, with the classes as they stand. */
+  private compute(stage: PowerStage, sense: Float64Array, o: Float64Array, hasNodes: boolean): void {
     const { chain, response } = this;
     if (this.isRamp) {
-      if (!hasNodes) this.fillNodes(stage, sense, h);
-      this.rampLeg(0, h);
-      if (chain.isLegSite) this.rampLeg(1, h);
+      if (!hasNodes) this.fillNodes(stage, sense, this.lengthS[0]!);
+      this.rampLeg(0);
+      if (chain.isLegSite) this.rampLeg(1);
     } else {
       this.steadyResponse(stage.x, sense, o, RAW_A, 0, this.passes[0]!);
       if (chain.isLegSite) this.steadyResponse(stage.x, sense, o, RAW_B, 2, this.passes[1]!);
     }
-    const a1 = chain.gain * response[0]!;
-    const a2 = chain.gain * response[1]!;
-    this.finishOutput(0, o, a1, a2, h);
-    if (!chain.isLegSite) return;
-    const b1 = chain.gain * response[2]!;
-    const b2 = chain.gain * response[3]!;
-    this.finishOutput(1, o, b1, b2, h);
-    if (chain.hasCombined) this.finishOutput(2, o, chain.pairSign * (a1 - b1), chain.pairSign * (a2 - b2), h);
+    const { gain } = chain;
+    for (let n = 0; n < 4; n++) response[n]! *= gain;
+    response[4] = chain.pairSign * (response[0]! - response[2]!);
+    response[5] = chain.pairSign * (response[1]! - response[3]!);
+    for (let k = 0; k < 3; k++) if (this.isUsed[k]) this.finishOutput(k, o);
   }
 
   private steadyResponse(x: Float64Array, sense: Float64Array, o: Float64Array, row: number, at: number, passes: boolean): void {
@@ -254,8 +259,11 @@ export class SensorBank implements Rider {
     this.response[at + 1] = two;
   }
 
-  private finishOutput(k: number, o: Float64Array, one: number, two: number, h: number): void {
+  private finishOutput(k: number, o: Float64Array): void {
     const { chain, z, y, zEnd, yEnd } = this;
+    const one = this.response[2 * k]!;
+    const two = this.response[2 * k + 1]!;
+    const h = this.lengthS[0]!;
     const slewing = this.slewing[k]!;
     const rate = slewing === 0 ? 0 : slewing * chain.slewVPerS;
     zEnd[k] = slewing === 0 ? o[36]! * z[k]! + one : z[k]! + rate * h;
@@ -343,16 +351,17 @@ export class SensorBank implements Rider {
     }
   }
 
-  private rampLeg(leg: number, h: number): void {
+  private rampLeg(leg: number): void {
     const { nodes, response } = this;
+    const h = this.lengthS[0]!;
     const at = leg * NODE_COUNT;
     response[2 * leg] = 0;
     response[2 * leg + 1] = 0;
     let isAbove = true;
     let isBelow = true;
     for (let j = 0; j < NODE_COUNT; j++) {
-      if (nodes[at + j]! < 0) isAbove = false;
-      else if (nodes[at + j]! > 0) isBelow = false;
+      if (nodes[at + j]! < -CUT_OFF_V) isAbove = false;
+      else if (nodes[at + j]! > CUT_OFF_V) isBelow = false;
     }
     if (this.chain.isUnipolar && isBelow) return;
     if (!this.chain.isUnipolar || isAbove) {
@@ -367,6 +376,7 @@ export class SensorBank implements Rider {
       response[2 * leg + 1] = two;
       return;
     }
+    this.isRegular = false;
     this.eachPositive(leg, (from, to) => segmentResponse(this.chain.poles, this.monomials, from, to, h, response, 2 * leg));
   }
 
@@ -495,6 +505,8 @@ export class SensorBank implements Rider {
         const end = rowOf(sense, at, stage.xEnd);
         low = start < end ? start : end;
         high = start < end ? end : start;
+        this.rawEnds[2 * leg] = start;
+        this.rawEnds[2 * leg + 1] = end;
         if (chain.isUnipolar) {
           const passes = (start > CUT_OFF_V || start < -CUT_OFF_V ? start : end) > 0;
           this.passes[leg] = passes;
@@ -508,9 +520,9 @@ export class SensorBank implements Rider {
       inputMin[leg] = chain.gain * low;
       inputMax[leg] = chain.gain * high;
     }
-    const [first, second] = chain.pairSign > 0 ? [0, 1] : [1, 0];
-    inputMin[2] = inputMin[first]! - inputMax[second]!;
-    inputMax[2] = inputMax[first]! - inputMin[second]!;
+    const first = chain.pairSign > 0 ? 0 : 1;
+    inputMin[2] = inputMin[first]! - inputMax[1 - first]!;
+    inputMax[2] = inputMax[first]! - inputMin[1 - first]!;
     return isSteady;
   }
 
@@ -591,7 +603,8 @@ export class SensorBank implements Rider {
   /** zEnd, yEnd at tau inside the piece. */
   private probe(stage: PowerStage, sense: Float64Array, tau: number): void {
     buildOperator(stage.slot.mode, stage.slot.spectrum, this.chain.poles, tau, this.scratch);
-    this.compute(stage, sense, this.scratch, tau, false);
+    this.lengthS[0] = tau;
+    this.compute(stage, sense, this.scratch, false);
   }
 
   private outputRoot(k: number, limitV: number, stage: PowerStage, sense: Float64Array, h: number, end: number): number {
@@ -641,9 +654,10 @@ export class SensorBank implements Rider {
   private readonly pendingSlew = new Int8Array(3);
   private readonly pendingSlewS = new Float64Array(3);
 
-  commit(h: number): void {
+  commit(stage: PowerStage): void {
     const { share, target, chain } = this;
-    this.noteClip();
+    const h = stage.piece[PIECE_LENGTH]!;
+    this.noteClip(stage);
     for (let k = 0; k < 3; k++) {
       this.z[k] = this.zEnd[k]!;
       this.y[k] = this.yEnd[k]!;
@@ -661,18 +675,19 @@ export class SensorBank implements Rider {
   }
 
   /** Clip events of the outputs that are read: one interval while any of them is clipped (D-26). */
-  private noteClip(): void {
+  private noteClip(stage: PowerStage): void {
     if (!this.log) return;
+    const startS = stage.piece[PIECE_START]!;
     const isClipped = this.isAnyClipped();
     if (isClipped === this.wasClipped) return;
     this.wasClipped = isClipped;
     if (!isClipped) {
-      this.log.add(this.startS, "clipEnds", "");
+      this.log.add(startS, "clipEnds", "");
       return;
     }
     const k = this.isRead[OUT_COMBINED] ? OUT_COMBINED : this.clip[0] !== 0 ? OUT_A : OUT_B;
     const word = this.clip[k]! > 0 ? "ceiling" : "floor";
-    this.log.add(this.startS, "clipStarts", word, this.chain.isLegSite && k < OUT_COMBINED ? (k === OUT_A ? "A" : "B") : undefined);
+    this.log.add(startS, "clipStarts", word, this.chain.isLegSite && k < OUT_COMBINED ? (k === OUT_A ? "A" : "B") : undefined);
   }
 
   isAnyClipped(): boolean {
@@ -737,6 +752,35 @@ export class SensorBank implements Rider {
   /** Rate of a slewing output, V/s; 0 while it follows its pole. */
   slewRate(k: number): number {
     return this.slewing[k] === 0 ? 0 : this.slewing[k]! * this.chain.slewVPerS;
+  }
+
+  /** No rectifier, clip or part of a ramp behaves other than linearly in the piece tried last. */
+  isRegular = true;
+
+  /** Pushes what must keep its sign for the piece tried last to stay regular. */
+  pushGuards(out: number[]): void {
+    const { chain } = this;
+    if (this.isRamp && chain.isUnipolar) for (let n = 0; n < (chain.isLegSite ? 2 : 1) * NODE_COUNT; n++) out.push(this.nodes[n]!);
+    if (!this.isRamp && chain.isUnipolar) for (let n = 0; n < 4; n++) out.push(this.rawEnds[n]!);
+    for (let k = 0; k < 3; k++) {
+      if (this.isUsed[k]) out.push(chain.outputMaxV + CLIP_V - this.base[k]! - this.inputMax[k]!, this.inputMin[k]! + this.base[k]! - chain.outputMinV + CLIP_V);
+    }
+  }
+
+  /** The outputs' own states lie inside the limits. */
+  statesInside(): boolean {
+    const { chain } = this;
+    for (let k = 0; k < 3; k++) {
+      if (!this.isUsed[k]) continue;
+      const zV = this.z[k]! + this.base[k]!;
+      const yV = this.holdsPin || !chain.hasFilter ? zV : this.y[k]! + this.base[k]!;
+      if (zV > chain.outputMaxV + CLIP_V || zV < chain.outputMinV - CLIP_V || yV > chain.outputMaxV + CLIP_V || yV < chain.outputMinV - CLIP_V) return false;
+    }
+    return true;
+  }
+
+  matches(saved: readonly number[]): boolean {
+    return this.share[0] === saved[6] && this.share[1] === saved[7] && this.target[0] === saved[8] && this.target[1] === saved[9] && this.wasClipped === (saved[13] === 1);
   }
 
   save(): number[] {

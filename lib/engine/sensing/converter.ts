@@ -1,6 +1,7 @@
 import type { ScenarioDocument } from "../../scenario/schema";
 import type { Conversion } from "../results";
 import type { Machine } from "../solver/machine";
+import { PIECE_LENGTH } from "../solver/power-stage";
 import type { Observer } from "../solver/rider";
 import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
 import { integrateOutputs } from "./output-integral";
@@ -162,9 +163,10 @@ export class Sampler implements Observer {
     });
   }
 
-  piece(_startS: number, h: number): void {
+  piece(): void {
     if (this.machine.period < this.fromPeriod) return;
     const { stage } = this.machine;
+    const h = stage.piece[PIECE_LENGTH]!;
     let sum = 0;
     visitNodes(stage, 0, h, (x, w) => (sum += w * x[0]!));
     this.periodIntegralAs += sum;

@@ -4,6 +4,7 @@ import type { StageParameters } from "../model/parameters";
 import type { Conversion, Figures } from "../results";
 import { rowRootOfSlope } from "../solver/locate";
 import type { Machine } from "../solver/machine";
+import { PIECE_LENGTH, PIECE_START } from "../solver/power-stage";
 import type { Observer } from "../solver/rider";
 import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
 import { integrateOutputs } from "./output-integral";
@@ -78,7 +79,9 @@ export class FigureMeter implements Observer {
     return [this.fromS, this.toS];
   }
 
-  piece(startS: number, h: number): void {
+  piece(): void {
+    const startS = this.machine.stage.piece[PIECE_START]!;
+    const h = this.machine.stage.piece[PIECE_LENGTH]!;
     // pieces end at the window's edges: the middle says on which side this one lies
     const middleS = startS + 0.5 * h;
     if (middleS < this.fromS || middleS > this.toS) return;

@@ -3,7 +3,7 @@ import { LEG_HIGH_CHANNEL, LEG_LOW_CHANNEL, LEG_THROUGH } from "../model/legs";
 import type { StageParameters } from "../model/parameters";
 import type { EventLog } from "../solver/event-log";
 import type { Machine } from "../solver/machine";
-import type { ModeSlot } from "../solver/power-stage";
+import { PIECE_LENGTH, PIECE_START, type ModeSlot } from "../solver/power-stage";
 import type { Observer } from "../solver/rider";
 import type { SensorBank } from "./bank";
 
@@ -38,8 +38,10 @@ export class RunMonitor implements Observer {
     this.commonRow = rowOfSite[bank.chain.site];
   }
 
-  piece(startS: number, h: number): void {
+  piece(): void {
     const { stage } = this.machine;
+    const startS = stage.piece[PIECE_START]!;
+    const h = stage.piece[PIECE_LENGTH]!;
     // within a mode everything is continuous: the start needs a look only where the mode is new
     if (stage.slot !== this.lookedAt) {
       this.lookedAt = stage.slot;
@@ -51,6 +53,24 @@ export class RunMonitor implements Observer {
     if (this.bank.isAnyClipped()) {
       this.clippedS += h;
       this.clippedFirstS ??= startS;
+    }
+  }
+
+  /** Counts time that was leapt over; nothing it watches can have happened in it (see pushGuards). */
+  skip(durationS: number): void {
+    this.ranS += durationS;
+  }
+
+  /** Pushes what must keep its sign for a period to bring no new remark. */
+  pushGuards(out: number[]): void {
+    const { stage } = this.machine;
+    const { rows } = stage.slot.mode;
+    const { amplifier } = this.machine.document.sensing;
+    for (const x of [stage.x, stage.xEnd]) {
+      out.push(this.diodeMinV - Math.abs(x[0]!) * this.onMaxOhm);
+      out.push(rowAt(rows, ROW_BUS, x) + stage.parameters.lowDiodeV);
+      const commonV = (this.machine.document.sensing.site === "legBottom" ? this.bank.chain.shuntAOhm : 1) * rowAt(rows, this.commonRow, x);
+      out.push(commonV - amplifier.commonModeMinV, amplifier.commonModeMaxV - commonV);
     }
   }
 

@@ -4,6 +4,7 @@ import { LEG_WORDS } from "../model/legs";
 import { SAME_INSTANT_S } from "../model/parameters";
 import { TRACE_NAMES, type InstantReading } from "../results";
 import type { Machine } from "../solver/machine";
+import { PIECE_LENGTH, PIECE_START } from "../solver/power-stage";
 import type { Observer } from "../solver/rider";
 import { stateAfter } from "../solver/spectrum";
 import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
@@ -107,7 +108,10 @@ export class InstantReader implements Observer {
     this.results = new Array(times.length);
   }
 
-  piece(startS: number, h: number): void {
+  piece(): void {
+    const { piece } = this.machine.stage;
+    const startS = piece[PIECE_START]!;
+    const h = piece[PIECE_LENGTH]!;
     while (this.next < this.order.length) {
       const index = this.order[this.next]!;
       const timeS = this.times[index]!;

@@ -1,6 +1,7 @@
 import { GATE_HIGH, GATE_LOW, isHighState, LEG_OPEN, LEG_THROUGH, LEG_WORDS } from "../model/legs";
 import { TRACE_NAMES, type Band, type Conduction, type Conversion, type SimulationEvent, type TraceName, type View } from "../results";
 import type { Machine } from "../solver/machine";
+import { PIECE_LENGTH, PIECE_START } from "../solver/power-stage";
 import type { Observer } from "../solver/rider";
 import type { SensorBank } from "./bank";
 import { readTraces, readTracesAtEnd, readTracesAtStart, TRACE_COUNT } from "./readings";
@@ -16,7 +17,9 @@ export class ExactRecorder implements Observer {
 
   constructor(private readonly machine: Machine, private readonly bank: SensorBank, private readonly fromS: number, private readonly toS: number, private readonly columnCount: number) {}
 
-  piece(startS: number, h: number): void {
+  piece(): void {
+    const startS = this.machine.stage.piece[PIECE_START]!;
+    const h = this.machine.stage.piece[PIECE_LENGTH]!;
     const from = Math.max(this.fromS - startS, 0);
     const to = Math.min(this.toS - startS, h);
     if (to < from || (to === from && h > 0 && from > 0)) return;
@@ -89,7 +92,9 @@ export class EnvelopeRecorder implements Observer {
     }
   }
 
-  piece(startS: number, h: number): void {
+  piece(): void {
+    const startS = this.machine.stage.piece[PIECE_START]!;
+    const h = this.machine.stage.piece[PIECE_LENGTH]!;
     const endS = startS + h;
     if (endS <= this.fromS || startS >= this.toS) return;
     const first = Math.floor((Math.max(startS, this.fromS) - this.fromS) / this.widthS);

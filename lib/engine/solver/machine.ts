@@ -6,12 +6,15 @@ import { CommandPattern, DutyCommand, type CommandMemory } from "./command";
 import type { EventLog } from "./event-log";
 import { GateDriver, type GateEdge } from "./gates";
 import { rowRoot } from "./locate";
-import { PowerStage, STAGE_BREAK_FORWARD, STAGE_BREAK_REVERSE, STAGE_DIODE_ENDS, STAGE_SHAFT_ZERO, STAGE_SOURCE } from "./power-stage";
+import { PIECE_LENGTH, PIECE_RIDER_EVENT, PIECE_STAGE_EVENT, PIECE_START, PowerStage, STAGE_BREAK_FORWARD, STAGE_BREAK_REVERSE, STAGE_DIODE_ENDS, STAGE_SHAFT_ZERO, STAGE_SOURCE } from "./power-stage";
 import type { Observer, Rider } from "./rider";
 import { WindingNode } from "./winding";
 
 /** Everything needed to go on from the start of a period. */
 export type Checkpoint = { period: number; numbers: number[]; gates: number[]; rider: number[] };
+
+/** State at the start of a plain period: what a period can change when nothing but the PWM pattern acts. */
+export type PeriodState = { period: number; x: Float64Array; rider: number[]; gates: number[]; legA: number; legB: number; shaftSign: number; sourceConducts: boolean; gateA: number; gateB: number; isWaiting: boolean };
 
 /** Pieces without progress at one instant after which shaft events are let pass: guards that chatter by rounding. */
 const IDLE_PIECES_MAX = 12;
@@ -37,6 +40,8 @@ export class Machine {
   isWaiting = false;
   isReversal = false;
   observers: Observer[] = [];
+  /** One more observer for the time of a survey (see PeriodLeaper). */
+  observersBeside: Observer | null = null;
   /** Observers that belong to the model itself (the winding's thermal node) come first and stay. */
   readonly ownObserverCount: number;
   readonly periodS: number;
@@ -246,45 +251,48 @@ export class Machine {
   private advance(untilS: number): void {
     const { stage, rider } = this;
     let idle = 0;
+    const { piece } = stage;
     while (this.offsetS < untilS) {
       const restS = untilS - this.offsetS;
-      let h = rider.pieceLimit(stage, restS);
-      h = stage.prepare(h, this.timeS - this.changedAtS, this.periodS);
-      let operator = stage.operator(h);
-      stage.apply(operator);
-      let eventS = stage.nextEvent(h);
-      if (idle > IDLE_PIECES_MAX && eventS <= 0) eventS = -1;
-      let isStageEvent = eventS >= 0;
-      if (isStageEvent && eventS < h) {
-        h = eventS;
-        operator = stage.operator(h);
-        stage.apply(operator);
+      piece[PIECE_START] = this.periodStartS + this.offsetS;
+      piece[PIECE_LENGTH] = restS;
+      rider.limitPiece(stage);
+      stage.prepare(this.changedAtS, this.periodS);
+      stage.step();
+      let isStageEvent = stage.nextEvent();
+      if (isStageEvent && idle > IDLE_PIECES_MAX && piece[PIECE_STAGE_EVENT]! <= 0) isStageEvent = false;
+      if (isStageEvent && piece[PIECE_STAGE_EVENT]! < piece[PIECE_LENGTH]!) {
+        piece[PIECE_LENGTH] = piece[PIECE_STAGE_EVENT]!;
+        stage.step();
       }
-      const riderS = rider.attempt(stage, operator, h, this.timeS);
-      if (riderS >= 0 && riderS < h && !(idle > IDLE_PIECES_MAX && riderS === 0)) {
-        h = riderS;
+      if (rider.attempt(stage) && piece[PIECE_RIDER_EVENT]! < piece[PIECE_LENGTH]! && (piece[PIECE_RIDER_EVENT]! > 0 || idle <= IDLE_PIECES_MAX)) {
+        piece[PIECE_LENGTH] = piece[PIECE_RIDER_EVENT]!;
         isStageEvent = false;
-        operator = stage.operator(h);
-        stage.apply(operator);
-        rider.attempt(stage, operator, h, this.timeS);
+        stage.step();
+        rider.attempt(stage);
       }
+      const h = piece[PIECE_LENGTH]!;
       idle = h > LEAST_PROGRESS_S ? 0 : idle + 1;
       this.intervals++;
-      this.finishPiece(h, h === restS ? untilS : this.offsetS + h, isStageEvent);
+      if (h > 0) this.commitPiece(isStageEvent);
+      this.offsetS = h === restS ? untilS : this.offsetS + h;
+      if (isStageEvent) this.takeStageEvent();
     }
   }
 
-  private finishPiece(h: number, endOffsetS: number, isStageEvent: boolean): void {
-    const { stage, rider } = this;
-    if (h > 0) {
-      const startS = this.timeS;
-      if (this.log) this.noteCurrentZero(startS, h, isStageEvent);
-      for (let n = 0; n < this.observers.length; n++) this.observers[n]!.piece(startS, h);
-      stage.commit();
-      rider.commit(h);
-      this.offsetS = endOffsetS;
-    }
-    if (!isStageEvent) return;
+  private commitPiece(isStageEvent: boolean): void {
+    const { stage, observers } = this;
+    const i0 = stage.x[0]!;
+    const i1 = stage.xEnd[0]!;
+    if (this.log && ((i0 > 0 && i1 < 0) || (i0 < 0 && i1 > 0))) this.noteCurrentZero(isStageEvent);
+    if (this.observersBeside) this.observersBeside.piece();
+    else for (let n = 0; n < observers.length; n++) observers[n]!.piece();
+    stage.commit();
+    this.rider.commit(stage);
+  }
+
+  private takeStageEvent(): void {
+    const { stage } = this;
     const { mode } = stage.slot;
     const { legA, legB } = mode;
     const kind = stage.eventKind;
@@ -296,15 +304,13 @@ export class Machine {
   }
 
   /** A zero crossing while both legs conduct in channels changes no mode but is an event (D-46). */
-  private noteCurrentZero(startS: number, h: number, isStageEvent: boolean): void {
+  private noteCurrentZero(isStageEvent: boolean): void {
     const { stage } = this;
-    const i0 = stage.x[0]!;
-    const i1 = stage.xEnd[0]!;
-    if (!((i0 > 0 && i1 < 0) || (i0 < 0 && i1 > 0))) return;
     if (isStageEvent && stage.eventKind === STAGE_DIODE_ENDS) return;
     const log = this.log!;
-    const atS = log.isKept("currentZero") ? rowRoot(CURRENT_ROW, stage.slot.mode, stage.slot.spectrum, stage.x, 0, i0, h, i1) : 0;
-    log.add(startS + atS, "currentZero", i1 > 0 ? "to forward" : "to reverse");
+    const { piece, slot, x, xEnd } = stage;
+    const atS = log.isKept("currentZero") ? rowRoot(CURRENT_ROW, slot.mode, slot.spectrum, x, 0, x[0]!, piece[PIECE_LENGTH]!, xEnd[0]!) : 0;
+    log.add(piece[PIECE_START]! + atS, "currentZero", xEnd[0]! > 0 ? "to forward" : "to reverse");
   }
 
   private noteStageEvent(kind: number, legA: number, legB: number): void {
@@ -321,6 +327,74 @@ export class Machine {
     } else if (kind === STAGE_BREAK_FORWARD) add("breakAway", "+");
     else if (kind === STAGE_BREAK_REVERSE) add("breakAway", "-");
     else if (kind === STAGE_SOURCE) add(stage.sourceConducts ? "sourceConducts" : "sourceBlocks", "");
+  }
+
+  /* ------------------------------------------------------ plain periods ------------------------------------------------ */
+
+  /** Nothing but the PWM pattern acts in the period that starts now: no change of parameters or direction, no override. */
+  isPlainPeriod(): boolean {
+    const k = this.period;
+    if (k === 0 || k >= this.periodCount - 1) return false;
+    const startS = k / this.frequencyHz;
+    const endS = startS + this.periodS;
+    if (this.nextChange < this.changes.length && this.changes[this.nextChange]! <= endS) return false;
+    const duty = this.command.at(startS);
+    if (duty !== 0 && Math.sign(duty) !== this.memory.direction) return false;
+    return !this.pattern.hasOverride(this.memory, startS, endS);
+  }
+
+  /** The period that starts now has this duty, gate memory and conduction state. */
+  startsLike(state: PeriodState, duty: number): boolean {
+    if (this.command.at(this.period / this.frequencyHz) !== duty || !this.driver.matches(state.gates)) return false;
+    return this.returnsTo(state);
+  }
+
+  /** Legs, gates, shaft and source stand as in `state`. */
+  returnsTo(state: PeriodState): boolean {
+    const { stage } = this;
+    const { mode } = stage.slot;
+    return mode.legA === state.legA && mode.legB === state.legB && stage.shaftSign === state.shaftSign && stage.sourceConducts === state.sourceConducts && this.gateA === state.gateA && this.gateB === state.gateB && this.driver.matches(state.gates) && this.rider.matches(state.rider);
+  }
+
+  /** Whether the log still keeps events of a kind that has occurred since `counts`. */
+  keepsEvents(counts: EventLog["counts"]): boolean {
+    if (!this.log) return false;
+    for (const kind of Object.keys(this.log.counts) as EventKind[]) if (this.log.counts[kind] !== counts[kind] && this.log.isKept(kind)) return true;
+    return false;
+  }
+
+  /** States that move: all but the shaft at rest and an algebraic bus. */
+  isMovingState(index: number): boolean {
+    const { stage } = this;
+    if (index === 1) return !stage.parameters.isLocked && stage.shaftSign !== 0;
+    return index === 0 || stage.parameters.hasBusState;
+  }
+
+  periodState(): PeriodState {
+    const { stage } = this;
+    const { mode } = stage.slot;
+    return { period: this.period, x: stage.x.slice(), rider: this.rider.save(), gates: this.driver.save(), legA: mode.legA, legB: mode.legB, shaftSign: stage.shaftSign, sourceConducts: stage.sourceConducts, gateA: this.gateA, gateB: this.gateB, isWaiting: this.isWaiting };
+  }
+
+  setPeriodState(state: PeriodState): void {
+    const { stage } = this;
+    this.period = state.period;
+    stage.x.set(state.x);
+    stage.shaftSign = state.shaftSign;
+    stage.sourceConducts = state.sourceConducts;
+    this.gateA = stage.gateA = state.gateA;
+    this.gateB = stage.gateB = state.gateB;
+    this.isWaiting = state.isWaiting;
+    this.driver.restore(state.gates);
+    this.rider.restore(state.rider);
+    stage.reenter(state.legA, state.legB);
+  }
+
+  /** Counts a period whose end state has been set by other means. */
+  skipPeriod(intervals: number, eventCounts: Readonly<Record<string, number>>): void {
+    this.period++;
+    this.intervals += intervals;
+    if (this.log) for (const kind in eventCounts) this.log.counts[kind as EventKind]! += eventCounts[kind]!;
   }
 
   /* ------------------------------------------------------- checkpoints ------------------------------------------------ */

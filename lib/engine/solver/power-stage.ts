@@ -2,7 +2,7 @@ import { fillAffineMode, ROW_CURRENT, ROW_LENGTH, rowAt, type AffineMode } from 
 import { ConductionResolver } from "../model/conduction";
 import { isDiodeState, LEG_HIGH_DIODE, LEG_LOW_DIODE, LEG_OPEN, LEG_STATE_COUNT } from "../model/legs";
 import type { StageParameters } from "../model/parameters";
-import { firstDownCrossing } from "./locate";
+import { firstDownCrossing, rowValue } from "./locate";
 import { buildOperator, OPERATOR_LENGTH, type Poles } from "./operator";
 import { Spectrum } from "./spectrum";
 
@@ -13,6 +13,15 @@ export const STAGE_BREAK_FORWARD = 3;
 export const STAGE_BREAK_REVERSE = 4;
 export const STAGE_SOURCE = 5;
 export const STAGE_DIODE_STARTS = 6;
+
+/**
+ * Entries of PowerStage.piece. Numbers that pass between functions for every piece go through this array: as arguments
+ * or results of calls that are not inlined each would be an allocation (measured: 700 bytes an interval, a third of the time).
+ */
+export const PIECE_START = 0;
+export const PIECE_LENGTH = 1;
+export const PIECE_STAGE_EVENT = 2;
+export const PIECE_RIDER_EVENT = 3;
 
 const RING = 12; // durations kept per mode: a PWM period has at most about ten different ones
 
@@ -38,6 +47,10 @@ export class ModeSlot {
 export class PowerStage {
   readonly x = new Float64Array(3);
   readonly xEnd = new Float64Array(3);
+  /** The piece being tried: start, length, first event of the stage and of its rider, s. */
+  readonly piece = new Float64Array(4);
+  /** Operator of the piece tried last. */
+  stepOperator: Float64Array = new Float64Array(OPERATOR_LENGTH);
   parameters!: StageParameters;
   slot!: ModeSlot;
   gateA = 0;
@@ -157,12 +170,15 @@ export class PowerStage {
   }
 
   /**
-   * Longest stretch from here over which the mode may be taken as affine, at most h: less only for fan loads (tangent)
-   * and rising friction (its middle value). Refills the mode where its tangent is off.
-   * @param sinceChangeS time since the parameters were set
+   * Shortens the piece to what may be taken as affine: less only for fan loads (tangent) and rising friction (its middle
+   * value). Refills the mode where its tangent is off.
+   * @param changedAtS when the parameters were set
    */
-  prepare(h: number, sinceChangeS: number, periodS: number): number {
+  prepare(changedAtS: number, periodS: number): void {
     const p = this.parameters;
+    if (p.coulombRateNmPerS === 0 && p.fanNmPerRadPerS2 === 0) return;
+    const h = this.piece[PIECE_LENGTH]!;
+    const sinceChangeS = this.piece[PIECE_START]! - changedAtS;
     let stretchS = h;
     if (p.coulombRateNmPerS !== 0 && this.shaftSign !== 0) {
       // middle value over a sixteenth of a period: error of the speed below rate h^2/(8 J)
@@ -172,7 +188,8 @@ export class PowerStage {
       this.parameters = { ...p, coulombNm: baseNm + p.coulombRateNmPerS * (sinceChangeS + 0.5 * stretchS) };
       this.enter(this.mode.legA, this.mode.legB);
       this.parameters = p;
-      return stretchS;
+      this.piece[PIECE_LENGTH] = stretchS;
+      return;
     }
     if (p.fanNmPerRadPerS2 > 0 && this.shaftSign !== 0) {
       const { a, b } = this.mode;
@@ -186,8 +203,15 @@ export class PowerStage {
         this.slot.version = ++this.version;
         this.fill(this.slot, middle);
       }
+      this.piece[PIECE_LENGTH] = stretchS;
     }
-    return stretchS;
+  }
+
+  /** Works out xEnd for the length of the piece. */
+  step(): void {
+    const operator = this.operator(this.piece[PIECE_LENGTH]!);
+    this.stepOperator = operator;
+    this.apply(operator);
   }
 
   /** The operator of the present mode over h, from the mode's ring or built now. */
@@ -206,7 +230,7 @@ export class PowerStage {
   }
 
   /** xEnd = state after the operator. */
-  apply(o: Float64Array): void {
+  private apply(o: Float64Array): void {
     const { x, xEnd } = this;
     const x0 = x[0]!;
     const x1 = x[1]!;
@@ -223,10 +247,11 @@ export class PowerStage {
     this.x[2] = this.xEnd[2]!;
   }
 
-  /** Earliest event of the stage inside (0, h], given xEnd; -1 if none. The kind is left in `eventKind`. */
-  nextEvent(h: number): number {
+  /** Finds the earliest event of the stage inside the piece, given xEnd; its kind is left in `eventKind`. */
+  nextEvent(): boolean {
     const { mode } = this.slot;
     const p = this.parameters;
+    const h = this.piece[PIECE_LENGTH]!;
     this.eventKind = STAGE_NO_EVENT;
     let firstS = -1;
     if (isDiodeState(mode.legA) || isDiodeState(mode.legB)) {
@@ -238,8 +263,24 @@ export class PowerStage {
       const sign = this.sourceConducts ? -1 : 1;
       firstS = this.watch(STAGE_SOURCE, 0, 0, sign, -sign * p.sourceV, h, firstS);
     }
-    if (firstS >= 0) this.crossings++;
-    return firstS;
+    if (firstS < 0) return false;
+    this.crossings++;
+    this.piece[PIECE_STAGE_EVENT] = firstS;
+    return true;
+  }
+
+  /** Pushes what must keep its sign for the piece tried last to stay free of stage events (both ends of it). */
+  pushGuards(out: number[]): void {
+    const { x, xEnd, guard, parameters: p } = this;
+    const { mode } = this.slot;
+    if (mode.isCurrentOpen && !p.isResistive) {
+      for (let sign = 1; sign >= -1; sign -= 2) if (this.resolver.startRow(p, sign, guard)) out.push(rowValue(guard, x), rowValue(guard, xEnd));
+    }
+    if (!p.isLocked && this.shaftSign !== 0) out.push(x[1]!, xEnd[1]!);
+    if (!p.isLocked && this.shaftSign === 0) {
+      for (const state of [x, xEnd]) out.push(this.holdMaxNm() - p.torqueNmPerA * state[0]!, p.torqueNmPerA * state[0]! - this.holdMinNm());
+    }
+    if (!p.acceptsReturn && p.hasBusState) out.push(p.sourceV - x[2]!, p.sourceV - xEnd[2]!);
   }
 
   private watchStart(h: number, firstS: number): number {

@@ -11,17 +11,19 @@ export interface Rider {
   changeAt(timeS: number, stage: PowerStage): void;
   /** The stage entered a mode; `currentBeforeA` is the motor current just before. */
   onMode(stage: PowerStage, currentBeforeA: number): void;
-  /** Longest piece from here, at most h (commutation ramps). */
-  pieceLimit(stage: PowerStage, h: number): number;
-  /** Works out the end of a piece of length h; returns the time of the rider's first own event in [0, h), or -1. */
-  attempt(stage: PowerStage, operator: Float64Array, h: number, startS: number): number;
+  /** Shortens the piece (stage.piece[PIECE_LENGTH]) to what the rider can take at once (commutation ramps). */
+  limitPiece(stage: PowerStage): void;
+  /** Works out the end of the piece; true if an own event lies inside, its time then in stage.piece[PIECE_RIDER_EVENT]. */
+  attempt(stage: PowerStage): boolean;
   /** Takes over the end of the piece tried last. */
-  commit(h: number): void;
+  commit(stage: PowerStage): void;
+  /** Shares and classes stand as saved (filter states may differ). */
+  matches(saved: readonly number[]): boolean;
   save(): number[];
   restore(saved: readonly number[]): void;
 }
 
-/** Sees every committed piece before the state moves on: figures, traces, readings. */
+/** Sees every committed piece (its start and length are in stage.piece) before the state moves on: figures, traces, readings. */
 export interface Observer {
-  piece(startS: number, h: number): void;
+  piece(): void;
 }

@@ -1,5 +1,5 @@
 import type { Observer } from "./rider";
-import type { PowerStage } from "./power-stage";
+import { PIECE_LENGTH, type PowerStage } from "./power-stage";
 import { stateAfter } from "./spectrum";
 
 /** Three-point Gauss-Legendre on [0, 1]: exact to degree 5, enough for i^2 over a piece of a period. */
@@ -20,8 +20,9 @@ export class WindingNode implements Observer {
     private readonly stage: PowerStage,
   ) {}
 
-  piece(_startS: number, h: number): void {
+  piece(): void {
     const { stage, state } = this;
+    const h = stage.piece[PIECE_LENGTH]!;
     let sum = 0;
     for (let j = 0; j < 3; j++) {
       stateAfter(stage.slot.mode, stage.slot.spectrum, stage.x, NODES[j]! * h, state);
