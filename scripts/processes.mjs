@@ -9,6 +9,10 @@ let isClosed = false;
 /**
  * Starts a program. `log` (a file) takes what it prints; without it the terminal does. `ended` settles with { code, signal }.
  * What `outlivesUs` is left alone when this process is stopped in a hurry.
+ * @param {string} command
+ * @param {string[]} args
+ * @param {import("node:child_process").SpawnOptions & { log?: string, append?: boolean, outlivesUs?: boolean }} [options]
+ * @returns {import("node:child_process").ChildProcess & { pid: number, ended: Promise<{ code: number | null, signal: string | null }> }}
  */
 export function launch(command, args, { log, append = false, outlivesUs = false, ...options } = {}) {
   if (isClosed) throw new Error(`${command} is not started: we are stopping`);
