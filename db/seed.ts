@@ -2,14 +2,14 @@ import { pathToFileURL } from "node:url";
 import { sql } from "drizzle-orm";
 import { DEMO_ACCOUNTS, DEMO_PASSWORD, DEMO_WORKSPACES, type DemoAccount } from "@/lib/access/demo-accounts";
 import { parseScenario, type ScenarioDocument } from "@/lib/scenario/schema";
-import { TEMPLATES } from "@/lib/scenario/templates";
+import { TEMPLATES, templateById, type Template } from "@/lib/scenario/templates";
 import { hashPassword } from "@/lib/server/passwords";
 import { summarise } from "@/lib/server/summary";
 import { hashToken } from "@/lib/server/tokens";
 import { connect, type RootDatabase } from "./client";
-import type { RunSummary } from "./schema/index";
+import { scenarios, type RunSummary } from "./schema/index";
 import { demoKey, demoShareToken } from "./demo/keys";
-import { EXTRAS, LINKS, STORIES, type Story } from "./demo/stories";
+import { EXTRAS, LINKS, PLAIN_STORY, STORIES, type Story } from "./demo/stories";
 
 /**
  * The demo: a waterworks team with people in every role, a second team, scenarios with histories, links of every kind. Also
@@ -24,12 +24,12 @@ export async function seedDatabase(ownerUrl: string): Promise<"seeded" | "left a
     if (known!.people > 0 && known!.demo === 0) return "left alone";
     await addPeople(db);
     for (const [index, template] of TEMPLATES.entries()) {
-      await addScenario(db, { key: `template ${template.id}`, title: template.title, document: template.document, story: STORIES[index % STORIES.length]!, hoursAgo: 5 + 17 * index });
+      await addScenario(db, { key: `template ${template.id}`, title: template.title, template, story: STORIES[template.id] ?? PLAIN_STORY, hoursAgo: 5 + 17 * index });
     }
-    for (const [index, extra] of EXTRAS.entries()) {
-      const template = TEMPLATES[extra.template % TEMPLATES.length]!;
-      const copiedFrom = extra.copyOf === undefined ? undefined : `template ${TEMPLATES[extra.copyOf]!.id}`;
-      await addScenario(db, { key: `extra ${extra.title}`, title: extra.title, document: template.document, story: extra.story, hoursAgo: 30 + 41 * index, copiedFrom });
+    for (const [index, { title, templateId, isCopy, story }] of EXTRAS.entries()) {
+      const template = templateById(templateId);
+      if (!template) throw new Error(`the demo tells of a template that does not exist: ${templateId}`);
+      await addScenario(db, { key: `extra ${title}`, title, template, story, hoursAgo: 30 + 41 * index, copiedFrom: isCopy ? `template ${templateId}` : undefined });
     }
     await addLinks(db);
     return "seeded";
@@ -55,14 +55,14 @@ async function addPeople(db: RootDatabase): Promise<void> {
   }
 }
 
-type Plan = { key: string; title: string; document: ScenarioDocument; story: Story; hoursAgo: number; copiedFrom?: string };
+type Plan = { key: string; title: string; template: Template; story: Story; hoursAgo: number; copiedFrom?: string };
 
-async function addScenario(db: RootDatabase, { key, title, document, story, hoursAgo, copiedFrom }: Plan): Promise<void> {
+async function addScenario(db: RootDatabase, { key, title, template, story, hoursAgo, copiedFrom }: Plan): Promise<void> {
   const id = demoKey(key);
   const known = await db.execute(sql`select from scenarios where id = ${id}`);
   if (known.length > 0) return;
 
-  const final = { ...document, title };
+  const final = { ...template.document, title };
   const steps = [...story.steps, { author: story.owner, message: story.finalMessage, edit: (same: ScenarioDocument) => same }];
   const revisions: { number: number; author: DemoAccount; message: string; document: ScenarioDocument; summary: RunSummary | null; hoursAgo: number }[] = [];
   for (const [index, step] of steps.entries()) {
@@ -78,7 +78,7 @@ async function addScenario(db: RootDatabase, { key, title, document, story, hour
   await db.transaction(async (tx) => {
     await tx.execute(sql`
       insert into scenarios (id, workspace_id, owner_id, copied_from_id, title, tags, state, newest_number, approved_number, archived_at, created_at, changed_at)
-      values (${id}, ${workspaceId}, ${demoKey(story.owner)}, ${copiedFrom === undefined ? null : demoKey(copiedFrom)}, ${title}, ${sql.param(`{${story.tags.map((tag) => JSON.stringify(tag)).join(",")}}`)}::text[],
+      values (${id}, ${workspaceId}, ${demoKey(story.owner)}, ${copiedFrom === undefined ? null : demoKey(copiedFrom)}, ${title}, ${sql.param([...template.tags], scenarios.tags)},
         ${story.state}, ${newest}, ${approved}, ${story.isArchived ? ago(hoursAgo - 1) : null}, ${ago(revisions[0]!.hoursAgo)}, ${ago(hoursAgo)})`);
     for (const revision of revisions) {
       const summary = revision.summary === null ? null : JSON.stringify(revision.summary);

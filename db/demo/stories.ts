@@ -10,7 +10,6 @@ export type Story = {
   workspace: keyof typeof DEMO_WORKSPACES;
   owner: DemoEmail;
   state: State;
-  tags: string[];
   /** Earlier revisions, oldest first; the final document comes after them. */
   steps: Step[];
   finalMessage: string;
@@ -23,7 +22,9 @@ const TESSA: DemoEmail = "designer@lowmeadow.example.org";
 const JORUN: DemoEmail = "second-designer@lowmeadow.example.org";
 const ILVAR: DemoEmail = "lead@lowmeadow.example.org";
 const ODILE: DemoEmail = "trainer@lowmeadow.example.org";
+const NICO: DemoEmail = "student@lowmeadow.example.org";
 const PIET: DemoEmail = "designer@northquay.example.org";
+const SUNA: DemoEmail = "admin@northquay.example.org";
 
 const withShunt = (factor: number) => (final: ScenarioDocument): ScenarioDocument => ({
   ...final,
@@ -40,25 +41,34 @@ const doubleShunt = (author: DemoEmail): Step => ({ author, message: "Twice the 
 const latePhase = (author: DemoEmail): Step => ({ author, message: "Sample late in the period", edit: withPhase(0.92) });
 const longDeadTime = (author: DemoEmail): Step => ({ author, message: "Dead time of the old gate driver", edit: withDeadTime(1e-6) });
 
-/** The stories of the waterworks, one per template in turn: who made it, how it came about, where it stands. */
-export const STORIES: Story[] = [
-  { workspace: "home", owner: TESSA, state: "approved", tags: ["gate", "24 V"], steps: [halfShunt(TESSA), latePhase(JORUN)], finalMessage: "Sample while the low side conducts; as measured on the rig" },
-  { workspace: "home", owner: JORUN, state: "inReview", tags: ["gate", "sampling"], steps: [latePhase(JORUN)], finalMessage: "Ready for review" },
-  { workspace: "home", owner: TESSA, state: "draft", tags: ["comparison"], steps: [longDeadTime(TESSA), doubleShunt(TESSA)], finalMessage: "Back to the shunt in stock", approvedNumber: 1 },
-  { workspace: "home", owner: ILVAR, state: "approved", tags: ["precision"], steps: [doubleShunt(ILVAR)], finalMessage: "Smaller shunt, same error" },
-  { workspace: "home", owner: JORUN, state: "draft", tags: ["precision", "low ohm"], steps: [longDeadTime(JORUN)], finalMessage: "Faster gate driver" },
-  { workspace: "home", owner: ODILE, state: "draft", tags: ["course"], steps: [], finalMessage: "For the spring course" },
-  { workspace: "home", owner: TESSA, state: "superseded", tags: ["gate"], steps: [halfShunt(TESSA)], finalMessage: "Replaced by the midscale design" },
-  { workspace: "home", owner: JORUN, state: "approved", tags: ["battery"], steps: [latePhase(JORUN), halfShunt(JORUN)], finalMessage: "Agreed with the works" },
-];
+const byTessa = (state: State, finalMessage: string, steps: Step[], more: Partial<Story> = {}): Story => ({ workspace: "home", owner: TESSA, state, finalMessage, steps, ...more });
+const byJorun = (state: State, finalMessage: string, steps: Step[]): Story => ({ ...byTessa(state, finalMessage, steps), owner: JORUN });
 
-/** Copies and leftovers beside the templates; `template` counts from 0. */
-export const EXTRAS: { template: number; title: string; copyOf?: number; story: Story }[] = [
-  { template: 0, title: "My copy: what happens at the reversal", copyOf: 0, story: { workspace: "home", owner: "student@lowmeadow.example.org", state: "draft", tags: ["course"], steps: [], finalMessage: "Copied to try things" } },
-  { template: 0, title: "Reversal for the spring course", copyOf: 0, story: { workspace: "home", owner: ODILE, state: "draft", tags: ["course"], steps: [longDeadTime(ODILE)], finalMessage: "Dead time as in the lesson" } },
-  { template: 1, title: "Gate drive, first sketch", story: { workspace: "home", owner: TESSA, state: "draft", tags: ["gate"], steps: [halfShunt(TESSA)], finalMessage: "Put aside: the motor was changed", isArchived: true } },
-  { template: 0, title: "Slewing drive, both directions", story: { workspace: "away", owner: PIET, state: "approved", tags: ["slewing"], steps: [halfShunt(PIET)], finalMessage: "As built" } },
-  { template: 2, title: "Hoist brake release", story: { workspace: "away", owner: "admin@northquay.example.org", state: "draft", tags: ["hoist"], steps: [], finalMessage: "Start" } },
+/** The stories of the waterworks' scenarios, by template: who made it, how it came about, where it stands. */
+export const STORIES: Record<string, Story> = {
+  reversal: byTessa("approved", "Sample in the on-time; as measured on the rig", [halfShunt(TESSA), latePhase(JORUN)]),
+  "continuous-on": byTessa("draft", "Back to the shunt in stock", [halfShunt(TESSA), longDeadTime(TESSA)], { approvedNumber: 1 }),
+  "low-side-recirculation": byJorun("inReview", "Ready for review", [latePhase(JORUN)]),
+  "high-side-recirculation": byJorun("approved", "Same drive, other recirculation; agreed with the works", [longDeadTime(JORUN)]),
+  "large-shunt": { ...byTessa("draft", "For the spring course", []), owner: ODILE },
+  "sub-milliohm": { ...byTessa("approved", "Half the shunt, the error holds", [doubleShunt(ILVAR)]), owner: ILVAR },
+  "combined-midscale": byJorun("draft", "Faster gate driver", [longDeadTime(JORUN)]),
+  "two-output-difference": byTessa("superseded", "Replaced by the midscale design", [latePhase(TESSA)]),
+  "battery-coil": byJorun("approved", "Hold at half", [doubleShunt(JORUN)]),
+};
+/** For a template that has no story yet. */
+export const PLAIN_STORY: Story = byTessa("draft", "From the bench", []);
+
+type Extra = { templateId: string; title: string; isCopy?: boolean; story: Story };
+const only = (owner: DemoEmail, finalMessage: string, more: Partial<Story> = {}): Story => ({ ...PLAIN_STORY, owner, finalMessage, ...more });
+
+/** Copies and leftovers beside the templates, and what the other workspace has. */
+export const EXTRAS: Extra[] = [
+  { templateId: "reversal", title: "My copy: what happens at the reversal", isCopy: true, story: only(NICO, "Copied to try things") },
+  { templateId: "reversal", title: "Reversal for the spring course", isCopy: true, story: only(ODILE, "Dead time as in the lesson", { steps: [longDeadTime(ODILE)] }) },
+  { templateId: "continuous-on", title: "Gate drive, first sketch", story: only(TESSA, "Put aside: the motor was changed", { steps: [halfShunt(TESSA)], isArchived: true }) },
+  { templateId: "reversal", title: "Slewing drive, both directions", story: only(PIET, "As built", { workspace: "away", state: "approved", steps: [halfShunt(PIET)] }) },
+  { templateId: "combined-midscale", title: "Hoist, lowering and lifting", story: only(SUNA, "Start", { workspace: "away" }) },
 ];
 
 /** Links of the first scenario: one of each kind, so that every page a link can lead to is there to see. */

@@ -2,7 +2,7 @@ import { z } from "zod";
 import { requireScenario, requireScenarioThing } from "@/db/queries/scenarios";
 import { changeArchived, changeTags, changeTitle, createScenario as insertScenario } from "@/db/queries/scenario-changes";
 import { failure, success } from "@/lib/result";
-import { TEMPLATES } from "@/lib/scenario/templates";
+import { templateById } from "@/lib/scenario/templates";
 import { defineDeed } from "../deed";
 import { keyField, scenarioField, titleField } from "../findings";
 import { summarise } from "../summary";
@@ -17,14 +17,15 @@ const tagsField = z
 const newScenarioInput = z
   .object({ templateId: z.string().max(80).optional(), document: scenarioField.optional(), title: titleField.optional() })
   .transform((input, context) => {
-    const template = TEMPLATES.find((one) => one.id === input.templateId);
+    const template = input.templateId === undefined ? undefined : templateById(input.templateId);
     const document = input.document ?? template?.document;
     if (!document) {
       context.addIssue({ code: "custom", path: ["templateId"], message: "Choose a template or give a document." });
       return z.NEVER;
     }
     const title = input.title ?? document.title;
-    return { title, document: { ...document, title }, from: template && !input.document ? `From the template "${template.title}"` : "Imported" };
+    const isFromTemplate = template !== undefined && input.document === undefined;
+    return { title, document: { ...document, title }, tags: isFromTemplate ? [...template.tags] : [], message: isFromTemplate ? `From the template "${template.title}"` : "Imported" };
   });
 
 /** A new scenario from a template or a document. */
@@ -34,7 +35,7 @@ export const createScenario = defineDeed({
   limit: "revision.save",
   prepare: ({ input }) => summarise(input.document),
   run: async ({ tx, scope, input, prepared }) =>
-    success({ id: await insertScenario(tx, scope, { title: input.title, tags: [], document: input.document, message: input.from, summary: prepared }) }),
+    success({ id: await insertScenario(tx, scope, { ...input, summary: prepared }) }),
   audit: ({ input, result }) => ({ thingId: result.ok ? result.value.id : undefined, detail: { title: input.title } }),
 });
 
