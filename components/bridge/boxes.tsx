@@ -57,17 +57,17 @@ export function LoadSymbol({ geometry: g, kind, currentA, direction, textSize }:
       ) : (
         <rect x={x - r - 8} y={y - r} width={2 * r + 16} height={2 * r} fill="var(--sheet)" stroke="var(--ink)" strokeWidth="1.6" />
       )}
-      <text x={x} y={y - r + 6 + small * 0.75} className={styles.caps} fontSize={Math.min(small, 11)}>
+      <text x={x} y={y - 10.5} className={styles.loadName} fontSize={Math.min(small, 12)}>
         {LOAD_WORDS[kind]}
       </text>
-      <text x={x} y={y + 7} className={styles.numeral} fontSize={20}>
+      <text x={x} y={y + 8} className={styles.numeral} fontSize={20}>
         {amount}
         <tspan className={styles.unit} fontSize={small} dx="2">
           A
         </tspan>
       </text>
       {kind !== "motor" && <LoadSign kind={kind} x={x} y={y + r + 1} />}
-      <DirectionSign x={x} y={y + 17} direction={direction} scale={1.1} />
+      <DirectionSign x={x} y={y + 18} direction={direction} scale={1.1} />
       <text x={x - r - (kind === "motor" ? 8 : 14)} y={y - 12} textAnchor="end" className={styles.faint} fontSize={small}>
         A
       </text>

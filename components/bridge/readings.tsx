@@ -16,10 +16,10 @@ type Anchor = { x: number; y: number; anchor: "start" | "middle" | "end" };
 /** Where the words of a shunt stand: outside the bridge beside leg shunts, in the supply's loop for the others. */
 function placeOf(g: BridgeGeometry, facts: SensingFacts, leg: ShuntWords["leg"]): Anchor {
   const isTop = facts.site === "legTop" || facts.site === "supply";
-  const y = isTop ? g.yTopStaff + 1 : facts.site === "line" ? g.yMid - 10 : g.yBottomStaff - 14;
+  const y = isTop ? g.yTopStaff + 1 : facts.site === "line" ? g.yMid : g.yBottomStaff - 18;
   if (leg === "A") return { x: g.xA - 36, y, anchor: "end" };
   if (leg === "B") return { x: g.xB + 36, y, anchor: "start" };
-  return { x: facts.site === "line" ? g.xA - 42 : (g.xSupply + g.xA) / 2 - 6, y: facts.site === "supply" ? y + 4 : y, anchor: facts.site === "line" ? "end" : "middle" };
+  return { x: facts.site === "line" ? g.xA - 42 : (g.xSupply + g.xA) / 2 - 6, y: facts.site === "supply" ? y + 7 : y, anchor: facts.site === "line" ? "end" : "middle" };
 }
 
 /** Millivolt across each shunt, ampere and way, the output it makes and whether that rests on a limit. */
@@ -62,13 +62,13 @@ export function ShuntNames({ geometry: g, facts, textSize }: Omit<Props, "readin
     <g>
       {staffPlaces(g, facts.site).map((place) => {
         const isB = place.leg === "B";
-        const x = place.leg === null ? place.x : isB ? g.xB - 15 : g.xA + 15;
-        const y = !place.isLevel ? place.y - 1 : facts.site === "line" ? place.y + 17 : facts.site === "supply" ? g.yTop + 74 : g.yBottom - 62;
-        if (place.leg === null && facts.site !== "line") return <NameInLoop key="loop" x={x - 6} y={y} ohm={facts.shuntOhm} size={textSize(11)} />;
+        const x = isB ? g.xB - 15 : g.xA + 15;
+        const y = place.y - 1;
+        if (place.leg === null) return <NameInLoop key="loop" geometry={g} facts={facts} size={textSize(11)} />;
         return (
-          <g key={place.leg ?? "one"} textAnchor={place.leg === null ? "middle" : isB ? "end" : "start"}>
+          <g key={place.leg} textAnchor={isB ? "end" : "start"}>
             <text x={x} y={y} className={styles.strong} fontSize={textSize(11.5)}>
-              {place.leg === null ? "Shunt" : `Shunt ${place.leg}`}
+              Shunt {place.leg}
             </text>
             <text x={x} y={y + step} className={styles.plain} fontSize={textSize(11)}>
               {ohmText(facts.shuntOhm)}
@@ -80,10 +80,13 @@ export function ShuntNames({ geometry: g, facts, textSize }: Omit<Props, "readin
   );
 }
 
-function NameInLoop({ x, y, ohm, size }: { x: number; y: number; ohm: number; size: number }) {
+/** The single shunt's name stands with its reading in the supply's loop, where there is room at every site. */
+function NameInLoop({ geometry: g, facts, size }: { geometry: BridgeGeometry; facts: SensingFacts; size: number }) {
+  const place = placeOf(g, facts, null);
+  const y = facts.site === "supply" ? place.y + 6 + size * 2.2 : place.y - 22;
   return (
-    <text x={x} y={y} textAnchor="middle" className={styles.plain} fontSize={size}>
-      <tspan className={styles.strong}>Shunt</tspan> {ohmText(ohm)}
+    <text x={place.x} y={y} textAnchor={place.anchor} className={styles.plain} fontSize={size}>
+      <tspan className={styles.strong}>Shunt</tspan> {ohmText(facts.shuntOhm)}
     </text>
   );
 }
@@ -105,9 +108,9 @@ export function OutputGauge({ geometry: g, reading, facts, textSize, idealV }: P
   const gapV = idealV === null ? 0 : Math.abs(idealV - value);
   const isWrong = gapV > facts.sampleLimitA * facts.gainRatio * facts.shuntOhm;
   const small = textSize(11);
-  const x = xm - 66;
+  const x = xm - 58;
   const isTwo = facts.readingTrace === "outAV" && reading.outBV !== null;
-  const top = g.yMid + g.motorRadius + 6 + small;
+  const top = g.yMid + g.motorRadius + 3 + small;
   return (
     <g>
       <Gauge x={x} y={y} width={15} height={height} {...span} valueV={value} baseV={baseV} fill={fill} hasMidscale={facts.readingTrace === "combinedV"} />
@@ -123,7 +126,7 @@ export function OutputGauge({ geometry: g, reading, facts, textSize, idealV }: P
           </tspan>
         </text>
         <text x={x + 34} y={top + 23 + small} className={isWrong ? styles.wrong : styles.plain} fontSize={small}>
-          {isWrong ? `should read ${fixed(idealV ?? 0, 3)}` : word}
+          {isWrong ? `should be ${fixed(idealV ?? 0, 3)}` : word}
         </text>
       </g>
     </g>

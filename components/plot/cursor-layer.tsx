@@ -35,7 +35,13 @@ export function CursorLayer(props: Props) {
 function Span({ layout, scale, fromS, toS }: { layout: PlotLayout; scale: TimeScale; fromS: number; toS: number }) {
   const x = clamp(xOf(scale, fromS), layout.x0, layout.x1);
   const end = clamp(xOf(scale, toS), layout.x0, layout.x1);
-  return <rect x={x} y={layout.lanesTop - 5} width={Math.max(0, end - x)} height={layout.lanesBottom - layout.lanesTop + 5} fill="var(--ref)" opacity="0.1" />;
+  const width = Math.max(0, end - x);
+  return (
+    <g fill="var(--ref)">
+      <rect x={x} y={layout.lanesTop - 6} width={width} height="3" />
+      <rect x={x} y={layout.lanesTop - 3} width={width} height={layout.lanesBottom - layout.lanesTop + 3} opacity="0.06" />
+    </g>
+  );
 }
 
 function Ghost({ layout, x }: { layout: PlotLayout; x: number }) {

@@ -6,7 +6,7 @@ import { xOf, yOf } from "./scale";
 import type { Scene } from "./scene";
 import { splitByRuns, type Direction } from "./sign-runs";
 import type { ColorName } from "./theme";
-import { niceTicks, tickTexts, unitScale } from "./ticks";
+import { laneTicks, tickTexts, unitScale } from "./ticks";
 
 const LINE_OF: Record<Direction, ColorName> = { 1: "fwd", [-1]: "rev", 0: "ink3" };
 const AREA_OF: Record<Direction, Paint> = { 1: { pattern: "forwardArea" }, [-1]: { pattern: "reverseArea" }, 0: { color: "ink3", opacity: 0.12 } };
@@ -109,8 +109,8 @@ export function drawTicks(painter: Painter, scene: Scene, lane: PlacedLane): voi
   const { layout } = scene;
   const { min, max } = lane.scale;
   const { factor, unit } = unitScale(Math.max(Math.abs(min), Math.abs(max)), lane.unit);
-  const ticks = niceTicks(min, max, lane.height > 60 ? 4 : 2).filter((tick) => lane.id !== "combined" || lane.base === null || Math.abs(yOf(lane.scale, tick) - yOf(lane.scale, lane.base)) > 11);
-  const texts = tickTexts(ticks, factor, min < 0);
+  const ticks = laneTicks(min, max, lane.height).filter((tick) => lane.id !== "combined" || lane.base === null || Math.abs(yOf(lane.scale, tick) - yOf(lane.scale, lane.base)) > 11);
+  const texts = tickTexts(ticks, factor, lane.kind === "signed" && lane.base === 0);
   const top = texts.length - 1;
   ticks.forEach((tick, index) => {
     const y = yOf(lane.scale, tick);
@@ -125,7 +125,7 @@ export function drawTicks(painter: Painter, scene: Scene, lane: PlacedLane): voi
 
 function drawDifferenceTicks(painter: Painter, scene: Scene, lane: PlacedLane, baseV: number): void {
   const { x1 } = scene.layout;
-  const ticks = niceTicks(lane.scale.min - baseV, lane.scale.max - baseV, 3);
+  const ticks = laneTicks(lane.scale.min - baseV, lane.scale.max - baseV, lane.height);
   const texts = tickTexts(ticks, 1, true);
   ticks.forEach((tick, index) => {
     const y = yOf(lane.scale, baseV + tick);

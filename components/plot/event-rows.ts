@@ -1,5 +1,5 @@
-import type { Band, Conversion, SimulationEvent } from "@/lib/engine/results";
-import { bandAt, CONDUCTION_SHORT } from "./bands";
+import type { Band, Conduction, Conversion, SimulationEvent } from "@/lib/engine/results";
+import { bandAt } from "./bands";
 import { isMiss } from "./draw-reading";
 
 /** One line of the events table: everything that happens at one instant. */
@@ -29,7 +29,7 @@ export function eventWords(event: SimulationEvent): string {
     case "diodeEnds":
       return "diode current ends";
     case "currentZero":
-      return detail === "" ? "motor current is zero" : `motor current is zero, ${detail}`;
+      return detail === "" ? "current is zero" : `current is zero, ${detail}`;
     case "clipStarts":
       return `output${leg === undefined ? "" : ` ${leg}`} clips${detail === "" ? "" : ` at ${detail}`}`;
     case "clipEnds":
@@ -55,6 +55,18 @@ export function eventWords(event: SimulationEvent): string {
   }
 }
 
+/** What a switch that turns on leads to, short enough for a row of the table. */
+const LEADS_TO: Record<Conduction, string> = {
+  driveForward: "drive fwd",
+  driveReverse: "drive rev",
+  returnToSupply: "return",
+  recirculateLow: "recirculate",
+  recirculateHigh: "recirculate",
+  deadTime: "dead time",
+  coasting: "coast",
+  shootThrough: "shoot-through",
+};
+
 /** Order of words within one instant: what a reader looks for first comes first. */
 const RANK: Partial<Record<SimulationEvent["kind"], number>> = { fault: 0, command: 1, sample: 2, currentZero: 3, clipStarts: 4, commonMode: 4, gate: 5, deadTime: 6, diodeStarts: 8, diodeEnds: 8 };
 const rank = (event: SimulationEvent): number => RANK[event.kind] ?? 7;
@@ -70,9 +82,10 @@ function labelOf(events: readonly SimulationEvent[], band: Band | null, sampleNu
     if (!words.includes(word)) words.push(word);
   }
   if (sampleNumber !== null) words.unshift(`sample ${sampleNumber}`);
-  const shown = capital(words.slice(0, 2).join(", ")) + (words.length > 2 ? " …" : "");
-  const isSwitching = events.some((event) => event.kind === "gate" && event.detail.endsWith("on"));
-  return isSwitching && band !== null && words.length === 1 ? `${shown}: ${CONDUCTION_SHORT[band.conduction].toLowerCase()}` : shown;
+  const isGateFirst = / (on|off)$/.test(words[0] ?? "");
+  if (isGateFirst && words[1] === "dead time") words.splice(0, 2, `${words[0]}: dead time`);
+  else if (isGateFirst && words.length === 1 && band !== null) words[0] += `: ${LEADS_TO[band.conduction]}`;
+  return capital(words.slice(0, 2).join(", ")) + (words.length > 2 ? " …" : "");
 }
 
 /**
@@ -94,7 +107,7 @@ export function eventRows(events: readonly SimulationEvent[], samples: readonly 
     const isSample = sample !== undefined && Math.abs(sample.timeS - timeS) <= sameS;
     rows.push({
       timeS,
-      label: labelOf(group, bandAt(bands, timeS), isSample ? sampleIndex + 1 : null),
+      label: labelOf(group, bandAt(bands, timeS + 2 * sameS), isSample ? sampleIndex + 1 : null),
       sample: isSample ? { number: sampleIndex + 1, isMiss: isMiss(sample, limitA) } : null,
     });
     index = end;

@@ -29,7 +29,7 @@ export function laneSentence(lane: PlacedLane, facts: CursorFacts, sensing: Sens
 /** Lane names at the left and values at the cursor at the far right, as page text over the canvas. */
 export function LaneFrames({ layout, facts, sensing, borderLabel, areStops, containerRef, onReadLane }: Props) {
   return (
-    <div ref={containerRef} className={styles.frames}>
+    <div ref={containerRef} className={styles.frames} data-compact={layout.isCompact || undefined}>
       {layout.lanes.map((lane) => {
         const sentence = laneSentence(lane, facts, sensing);
         return (

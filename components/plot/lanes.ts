@@ -78,7 +78,7 @@ export function allLanes(facts: SensingFacts): Lane[] {
   const plain = { kind: "lines" as const, sublabel: "", base: 0, nominalPx: 42, isReading: false };
   return [
     { ...plain, id: "conduction", kind: "strip", label: "Conduction", unit: "", traces: [], base: null, nominalPx: 15 },
-    { ...plain, id: "gates", kind: "gates", label: "Gates", unit: "", traces: [], base: null, nominalPx: 46 },
+    { ...plain, id: "gates", kind: "gates", label: "Gates", unit: "", traces: [], base: null, nominalPx: 44 },
     { ...plain, id: "motor", kind: "signed", label: "Motor", sublabel: "current", unit: "A", traces: [line("motorCurrentA")], nominalPx: 94 },
     { ...plain, id: "speed", kind: "signed", label: "Speed", sublabel: "of the shaft", unit: "rad/s", traces: [line("speedRadPerS")] },
     { ...plain, id: "bus", label: "Bus", sublabel: "voltage", unit: "V", traces: [line("busV")], base: null },

@@ -7,10 +7,10 @@ import { extentOf, type Extent } from "./values";
 
 /** Pixels of the frame. The gutter holds lane names and ticks, the reading column the values at the cursor. */
 export const FRAME = {
-  wide: { gutter: 120, readout: 150, top: 22, gap: 9, border: 16, axis: 26, codes: 18 },
+  wide: { gutter: 120, readout: 150, top: 21, gap: 8, border: 16, axis: 26, codes: 18 },
   compact: { gutter: 40, readout: 10, top: 18, gap: 10, border: 14, axis: 28, codes: 0 },
 };
-const LEAST_STRETCH = 0.7;
+const LEAST_STRETCH = 0.66;
 const MOST_STRETCH = 2.2;
 
 export type PlacedLane = Lane & { y: number; height: number; scale: ValueScale };
@@ -30,7 +30,7 @@ export type PlotLayout = {
 const isStretched = (lane: Lane): boolean => lane.kind === "signed" || lane.kind === "lines";
 const isWithCodes = (lane: Lane): boolean => lane.isReading;
 
-/** Places lanes one under another; plot lanes stretch from 0.7 to 2.2 of their nominal height to fill `wantedHeight`, strips do not. */
+/** Places lanes one under another; plot lanes stretch from 0.66 to 2.2 of their nominal height to fill `wantedHeight`, strips do not. */
 export function layoutLanes(lanes: readonly Lane[], domains: Map<LaneId, Domain>, width: number, wantedHeight: number, isCompact: boolean): PlotLayout {
   const frame = isCompact ? FRAME.compact : FRAME.wide;
   const shown = isCompact ? lanes.map((lane) => ({ ...lane, nominalPx: isStretched(lane) ? 84 : lane.nominalPx })) : lanes;
@@ -65,8 +65,9 @@ export const timeScaleOf = (layout: PlotLayout, range: PlotWindow): TimeScale =>
 const join = (one: Extent | null, other: Extent | null): Extent | null =>
   one === null ? other : other === null ? one : { min: Math.min(one.min, other.min), max: Math.max(one.max, other.max) };
 
-/** Smallest spans worth a scale of their own: below them a lane would magnify rounding. */
-const LEAST_SPAN: Record<string, number> = { A: 1e-3, V: 1e-3, "rad/s": 1e-2 };
+/** Smallest spans worth a scale of their own, in the lane's unit and as a share of the value: below them a lane would magnify ripple into a wall. */
+const LEAST_SPAN = 1e-3;
+const LEAST_SPAN_SHARE = 0.05;
 
 /**
  * Value range of each lane. Taken over the whole run where the overview knows it, so that zooming in time never changes the value
@@ -88,7 +89,8 @@ export function laneDomains(
     for (const view of views) for (const name of names) if (view !== undefined) extent = join(extent, extentOf(view, name));
     const isOutput = lane.id === "outputs" && facts.readingTrace !== "outAV";
     if (isOutput) extent = join(extent, { min: 0, max: facts.outputMaxV });
-    const wanted = paddedDomain(extent?.min ?? 0, extent?.max ?? 0, lane.base, LEAST_SPAN[lane.unit] ?? 1e-6);
+    const largest = Math.max(Math.abs(extent?.min ?? 0), Math.abs(extent?.max ?? 0));
+    const wanted = paddedDomain(extent?.min ?? 0, extent?.max ?? 0, lane.base, Math.max(LEAST_SPAN, largest * LEAST_SPAN_SHARE));
     domains.set(lane.id, stickyDomain(previous?.get(lane.id), wanted, isHeld));
   }
   return domains;

@@ -1,5 +1,6 @@
 "use client";
 
+import { useState } from "react";
 import type { Lane, LaneId } from "./lanes";
 import type { RunCommand } from "./run-commands";
 import styles from "./plot.module.css";
@@ -10,41 +11,61 @@ type Props = {
   lanes: readonly Lane[];
   shown: readonly LaneId[];
   onShown: (ids: LaneId[]) => void;
+  tableId: string;
+  isTableOpen: boolean;
+  onTable: (isOpen: boolean) => void;
+  isCompact: boolean;
 };
 
-const BUTTONS: { label: string; name: string; title: string; command: RunCommand }[] = [
-  { label: "◂", name: "Show earlier", title: "Show earlier (Ctrl+Left)", command: { do: "pan", direction: -1 } },
-  { label: "▸", name: "Show later", title: "Show later (Ctrl+Right)", command: { do: "pan", direction: 1 } },
+type Button = { label: string; name: string; title: string; command: RunCommand };
+
+const ZOOM: Button[] = [
   { label: "+", name: "Zoom in", title: "Zoom in (+)", command: { do: "zoom", factor: 0.5 } },
   { label: "−", name: "Zoom out", title: "Zoom out (−)", command: { do: "zoom", factor: 2 } },
-  { label: "Period", name: "Zoom to the PWM period", title: "Zoom to the PWM period (Z)", command: { do: "period" } },
   { label: "Whole run", name: "Whole run", title: "Whole run (0)", command: { do: "whole" } },
 ];
+const MORE: Button[] = [
+  { label: "Period", name: "Zoom to the PWM period", title: "Zoom to the PWM period (Z)", command: { do: "period" } },
+  { label: "◂", name: "Show earlier", title: "Show earlier (Ctrl+Left)", command: { do: "pan", direction: -1 } },
+  { label: "▸", name: "Show later", title: "Show later (Ctrl+Right)", command: { do: "pan", direction: 1 } },
+];
+const PIN: Button = { label: "Pin here", name: "Pin here", title: "Pin the cursor (P); Shift and drag does both ends", command: { do: "pin" } };
+const PINNED: Button[] = [
+  { label: "Zoom to span", name: "Zoom to the span between pin and cursor", title: "Show the time between pin and cursor", command: { do: "span" } },
+  { label: "Remove pin", name: "Remove pin", title: "Remove the pin (Shift+P)", command: { do: "unpin" } },
+];
 
-/** Every drag on the plot has its button here: zoom, pan, pin and span; and the choice of lanes. */
-export function PlotControls({ onCommand, hasPin, lanes, shown, onShown }: Props) {
+/** Every drag on the plot has its button here: zoom, pan, pin and span; and the table and the choice of lanes. On a phone all but zoom wait behind "More". */
+export function PlotControls({ onCommand, hasPin, lanes, shown, onShown, tableId, isTableOpen, onTable, isCompact }: Props) {
+  const [isMore, setMore] = useState(false);
+  const draw = (button: Button) => (
+    <button key={button.name} type="button" className={styles.button} aria-label={button.name} title={button.title} onClick={() => onCommand(button.command)}>
+      {button.label}
+    </button>
+  );
   return (
     <div className={styles.controls} role="toolbar" aria-label="Time axis">
-      {BUTTONS.map((button) => (
-        <button key={button.name} type="button" className={styles.button} aria-label={button.name} title={button.title} onClick={() => onCommand(button.command)}>
-          {button.label}
-        </button>
-      ))}
-      <span className={styles.gap} />
-      <button type="button" className={styles.button} title="Pin the cursor (P); Shift+drag does both ends" onClick={() => onCommand({ do: "pin" })}>
-        Pin here
-      </button>
-      {hasPin && (
+      {ZOOM.map(draw)}
+      {isCompact && (
         <>
-          <button type="button" className={styles.button} onClick={() => onCommand({ do: "span" })}>
-            Zoom to span
-          </button>
-          <button type="button" className={styles.button} title="Remove the pin (Shift+P)" onClick={() => onCommand({ do: "unpin" })}>
-            Remove pin
+          <span className={styles.push} />
+          <button type="button" className={styles.button} aria-expanded={isMore} onClick={() => setMore(!isMore)}>
+            More
           </button>
         </>
       )}
-      <LaneChoice lanes={lanes} shown={shown} onShown={onShown} />
+      {(!isCompact || isMore) && (
+        <>
+          {MORE.map(draw)}
+          <span className={styles.gap} />
+          {[PIN, ...(hasPin ? PINNED : [])].map(draw)}
+          <span className={styles.push} />
+          <button type="button" className={styles.button} aria-expanded={isTableOpen} aria-controls={isTableOpen ? tableId : undefined} onClick={() => onTable(!isTableOpen)}>
+            Table
+          </button>
+          <LaneChoice lanes={lanes} shown={shown} onShown={onShown} />
+        </>
+      )}
     </div>
   );
 }

@@ -31,18 +31,8 @@ export function valueTable(view: View, range: PlotWindow, lanes: readonly Lane[]
   };
 }
 
-/** The same facts as the drawing, for reading aloud and for copying. Built only while it is open. */
-export function PlotTable(props: Props) {
-  const [isOpen, setOpen] = useState(false);
-  return (
-    <details className={styles.table} onToggle={(event) => setOpen(event.currentTarget.open)}>
-      <summary>Table of values</summary>
-      {isOpen && <OpenTable {...props} />}
-    </details>
-  );
-}
-
-function OpenTable({ view, window: range, lanes, rows }: Props) {
+/** The same facts as the drawing, for reading aloud and for copying. */
+export function PlotTable({ id, view, window: range, lanes, rows }: Props & { id: string }) {
   const table = useMemo(() => valueTable(view, range, lanes, rows), [view, range, lanes, rows]);
   const [message, setMessage] = useState("");
   const copy = async () => {
@@ -55,7 +45,7 @@ function OpenTable({ view, window: range, lanes, rows }: Props) {
     }
   };
   return (
-    <div className={styles.scroll} tabIndex={0} role="region" aria-label="Values at events and samples">
+    <div id={id} className={`${styles.table} ${styles.scroll}`} tabIndex={0} role="region" aria-label="Values at events and samples">
       <p>
         <button type="button" className={styles.button} onClick={copy}>
           Copy table

@@ -75,7 +75,8 @@ function readingRows(lane: PlacedLane, facts: CursorFacts, sensing: SensingFacts
   const write = laneNumber(lane, false);
   const idealV = facts.valueOf("idealV");
   const value = facts.valueOf(lane.traces[0]!.name);
-  const rows = [{ label: lane.label.toLowerCase(), text: write(value) }];
+  const isWrong = idealV !== null && value !== null && Math.abs(idealV - value) > sensing.sampleLimitA * sensing.gainRatio * sensing.shuntOhm;
+  const rows: ReadoutRow[] = [{ label: lane.label.toLowerCase(), text: write(value), isFault: isWrong }];
   if (idealV !== null) rows.push({ label: "should read", text: write(idealV) });
   if (facts.sample !== null) rows.push({ label: "ADC code", text: String(facts.sample.conversion.code) });
   return lane.id === "outputs" && sensing.isLegSite ? [...outputRows(lane, facts, sensing).slice(0, 2), ...rows.slice(1)] : rows;

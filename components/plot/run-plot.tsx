@@ -1,6 +1,6 @@
 "use client";
 
-import { useCallback, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { useCallback, useId, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import type { InstantReading, Simulation, View } from "@/lib/engine/results";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { announcement } from "./announcement";
@@ -62,6 +62,7 @@ const HELP = "Arrow keys step by event, with Shift by PWM period, with Ctrl they
 
 export function RunPlot(props: RunPlotProps) {
   const { view, overview, simulation, document, reading, cursorS, viewWindow, pinS, theme } = props;
+  const helpId = useId();
   const rootRef = useRef<HTMLElement>(null);
   const fieldRef = useRef<HTMLDivElement>(null);
   const framesRef = useRef<HTMLDivElement>(null);
@@ -69,6 +70,7 @@ export function RunPlot(props: RunPlotProps) {
   const size = useSize(fieldRef, { width: 900, height: 460 });
   const [ownLanes, setOwnLanes] = useState<readonly LaneId[] | null>(null);
   const [isInside, setInside] = useState(false);
+  const [isTableOpen, setTableOpen] = useState(false);
   const [said, setSaid] = useState("");
 
   const isCompact = size.width < COMPACT_BELOW_PX;
@@ -131,8 +133,11 @@ export function RunPlot(props: RunPlotProps) {
   };
 
   return (
-    <section ref={rootRef} className={styles.plot} role="group" aria-roledescription="run" aria-label="Waveforms of the run" aria-description={HELP} tabIndex={0} onKeyDown={onKeyDown} data-stale={props.isStale || undefined}>
-      <PlotControls onCommand={command} hasPin={pinS !== null} lanes={available} shown={shown} onShown={props.onLanes ?? setOwnLanes} />
+    <section ref={rootRef} className={styles.plot} role="group" aria-roledescription="run" aria-label="Waveforms of the run" aria-describedby={helpId} tabIndex={0} onKeyDown={onKeyDown} data-stale={props.isStale || undefined}>
+      <p id={helpId} className={styles.srOnly}>
+        {HELP}
+      </p>
+      <PlotControls onCommand={command} hasPin={pinS !== null} lanes={available} shown={shown} onShown={props.onLanes ?? setOwnLanes} tableId={`${helpId}-table`} isTableOpen={isTableOpen} onTable={setTableOpen} isCompact={isCompact} />
       <div ref={fieldRef} className={styles.field} style={props.heightPx === undefined ? undefined : { height: props.heightPx, flex: "none" }}>
         <div className={styles.stage} style={{ width: layout.width, height: layout.height }}>
           <StaticLayer width={layout.width} height={layout.height} theme={theme} className={styles.canvas} draw={draw} />
@@ -142,7 +147,7 @@ export function RunPlot(props: RunPlotProps) {
         </div>
       </div>
       {pinS !== null && <SpanBar view={view} lanes={layout.lanes} pinS={pinS} cursorS={cursorS} format={format} />}
-      <PlotTable view={view} window={viewWindow} lanes={layout.lanes} rows={rows} />
+      {isTableOpen && <PlotTable id={`${helpId}-table`} view={view} window={viewWindow} lanes={layout.lanes} rows={rows} />}
       <Announcer text={announcement(cursorS, facts, sensing, format)} said={said} className={styles.srOnly} />
     </section>
   );

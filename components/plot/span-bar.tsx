@@ -32,24 +32,32 @@ export function SpanBar({ view, lanes, pinS, cursorS, format }: Props) {
         <table>
           <thead>
             <tr>
-              <th scope="col">Quantity</th>
-              <th scope="col">Average</th>
-              <th scope="col">RMS</th>
-              <th scope="col">Difference</th>
+              <td />
+              {rows.map((row) => (
+                <th key={row.key} scope="col">
+                  {row.name}
+                </th>
+              ))}
             </tr>
           </thead>
           <tbody>
-            {rows.map((row) => (
-              <tr key={row.key}>
-                <th scope="row">{row.name}</th>
-                <td>{row.write(row.figures.meanValue)}</td>
-                <td>{row.write(row.figures.rmsValue).replace("+", "")}</td>
-                <td>{row.write(row.figures.change * row.sign)}</td>
-              </tr>
-            ))}
+            <FigureRow name="Average" cells={rows.map((row) => ({ key: row.key, text: row.write(row.figures.meanValue) }))} />
+            <FigureRow name="RMS" cells={rows.map((row) => ({ key: row.key, text: row.write(row.figures.rmsValue).replace("+", "") }))} />
+            <FigureRow name="Difference" cells={rows.map((row) => ({ key: row.key, text: row.write(row.figures.change * row.sign) }))} />
           </tbody>
         </table>
       )}
     </section>
+  );
+}
+
+function FigureRow({ name, cells }: { name: string; cells: { key: string; text: string }[] }) {
+  return (
+    <tr>
+      <th scope="row">{name}</th>
+      {cells.map((cell) => (
+        <td key={cell.key}>{cell.text}</td>
+      ))}
+    </tr>
   );
 }

@@ -23,6 +23,21 @@ export function niceTicks(min: number, max: number, count: number): number[] {
   return ticks;
 }
 
+const LEAST_TICK_PX = 14;
+
+/** Ticks of a lane: the smallest of the steps 1, 2, 2.5, 5 times a power of ten that leaves 14 px between two of them. */
+export function laneTicks(min: number, max: number, heightPx: number): number[] {
+  const leastStep = ((max - min) * LEAST_TICK_PX) / Math.max(1, heightPx);
+  if (!(leastStep > 0)) return [min];
+  const power = 10 ** Math.floor(Math.log10(leastStep));
+  const head = [1, 2, 2.5, 5, 10].find((step) => step * power >= leastStep * (1 - 1e-9)) ?? 10;
+  const step = head * power;
+  const ticks: number[] = [];
+  for (let index = Math.ceil(min / step - 1e-9); index * step <= max + step * 1e-9; index += 1) ticks.push(index === 0 ? 0 : Number((index * step).toPrecision(12)));
+  const tooMany = ticks.length > 5 ? ticks.filter((tick) => Math.abs(Math.round(tick / step) % 2) === 0) : ticks;
+  return tooMany.length > 0 ? tooMany : [min];
+}
+
 export type Domain = { min: number; max: number };
 
 /** The data with 6 % of air, never empty, with `around` always inside. */
@@ -80,8 +95,14 @@ export function fixed(value: number, decimals: number, isSigned = false): string
   return sign + grouped + (fraction === undefined ? "" : "." + fraction);
 }
 
-/** Decimals that tell two neighbouring ticks apart. */
-export const decimalsOf = (step: number): number => (step >= 1 ? 0 : Math.min(9, Math.ceil(-Math.log10(step) - 1e-9)));
+/** Decimals that write a step out in full, at most 9: 0 for 5, 1 for 2.5, 2 for 0.25. */
+export function decimalsOf(step: number): number {
+  for (let decimals = 0; decimals < 9; decimals += 1) {
+    const shifted = step * 10 ** decimals;
+    if (shifted >= 1 - 1e-9 && Math.abs(shifted - Math.round(shifted)) < 1e-6 * shifted) return decimals;
+  }
+  return 9;
+}
 
 export function tickTexts(ticks: readonly number[], factor: number, isSigned: boolean): string[] {
   const step = ticks.length > 1 ? Math.abs((ticks[1] ?? 0) - (ticks[0] ?? 0)) / factor : 1;
@@ -95,7 +116,7 @@ export function timeFormat(window: { fromS: number; toS: number }, pixelCount: n
   const largestS = Math.max(Math.abs(window.fromS), Math.abs(window.toS));
   const { factor, unit } = largestS < 2e-3 ? { factor: 1e-6, unit: "µs" } : largestS < 2 ? { factor: 1e-3, unit: "ms" } : { factor: 1, unit: "s" };
   const pixelS = (window.toS - window.fromS) / Math.max(1, pixelCount) / factor;
-  return { factor, unit, decimals: Math.min(6, Math.max(2, decimalsOf(pixelS))) };
+  return { factor, unit, decimals: Math.min(6, Math.max(2, Math.ceil(-Math.log10(pixelS) - 1e-9))) };
 }
 
 export const formatTime = (timeS: number, format: TimeFormat): string => `${fixed(timeS / format.factor, format.decimals)} ${format.unit}`;
