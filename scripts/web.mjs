@@ -1,4 +1,4 @@
-// The web server: the built application, on the loopback address unless HOST says otherwise.
+// The web server: the built application, on the loopback address unless SLACKWATER_HOST says otherwise.
 import { tailOf, Refusal } from "./messages.mjs";
 import { nextProgram, root, watchedNode } from "./paths.mjs";
 import { endGroup, launch, until } from "./processes.mjs";
@@ -6,7 +6,7 @@ import { endGroup, launch, until } from "./processes.mjs";
 const READY_WITHIN_MS = 60_000;
 
 /** Starts the server and waits until it says that it is ready, database included. Returns { ended, stop }. */
-export async function startWeb({ port, distDir, environment, log, host = process.env.HOST ?? "127.0.0.1" }) {
+export async function startWeb({ port, distDir, environment, log, host = process.env.SLACKWATER_HOST ?? "127.0.0.1" }) {
   const env = { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1", SLACKWATER_DIST_DIR: distDir, ...environment };
   const args = [...watchedNode, nextProgram, "start", "-H", host, "-p", String(port)];
   const child = launch(process.execPath, args, { cwd: root, env, log, append: true });
