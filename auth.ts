@@ -20,7 +20,10 @@ declare module "next-auth" {
 
 /** A refused sign-in, with the code that the form shows. Never says whether the e-mail is known. */
 export class SignInRefused extends CredentialsSignin {
-  constructor(public readonly errorCode: ErrorCode, public readonly detail?: unknown) {
+  constructor(
+    public readonly errorCode: ErrorCode,
+    public readonly detail?: unknown,
+  ) {
     super();
     this.code = errorCode;
   }
@@ -32,7 +35,11 @@ export const { handlers, auth, signIn, signOut } = NextAuth({
     Credentials({
       credentials: { email: { type: "email" }, password: { type: "password" } },
       async authorize(input, request) {
-        const visit = { address: addressOf(request.headers), userAgent: request.headers.get("user-agent") ?? "", correlationId: correlationIdOf(request.headers) };
+        const visit = {
+          address: addressOf(request.headers),
+          userAgent: request.headers.get("user-agent") ?? "",
+          correlationId: correlationIdOf(request.headers),
+        };
         const started = await startSession(db, { email: input.email, password: input.password }, visit);
         if (!started.ok) throw new SignInRefused(started.code, started.detail);
         const { userId, userName, email, sessionToken } = started.value;

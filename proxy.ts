@@ -5,7 +5,15 @@ import { applicationUrl, isSecure } from "./lib/server/env";
 import { CORRELATION_HEADER, NONCE_HEADER, PATH_HEADER } from "./lib/server/request";
 
 /** What opens without signing in. Everything else asks for a session first; API routes answer for themselves, with a problem document. */
-const PUBLIC = [/^\/$/, /^\/sign-in$/, /^\/join\//, /^\/reset$/, /^\/s\/[^/]+$/, /^\/api\//, /\.(?:svg|png|ico|txt|webmanifest|woff2?)$/];
+const PUBLIC = [
+  /^\/$/,
+  /^\/sign-in$/,
+  /^\/join\//,
+  /^\/reset$/,
+  /^\/s\/[^/]+$/,
+  /^\/api\//,
+  /\.(?:svg|png|ico|txt|webmanifest|woff2?)$/,
+];
 
 /**
  * Before every page: a nonce and the policy that names it, a correlation id, and the way to /sign-in for who has no
@@ -20,7 +28,8 @@ export async function proxy(request: NextRequest): Promise<NextResponse> {
   const policy = contentPolicy(nonce, process.env.NODE_ENV === "development", isSecure());
   const correlationId = crypto.randomUUID();
 
-  const mayPass = PUBLIC.some((pattern) => pattern.test(pathname)) || request.method !== "GET" || (await hasSessionCookie(request));
+  const mayPass =
+    PUBLIC.some((pattern) => pattern.test(pathname)) || request.method !== "GET" || (await hasSessionCookie(request));
   if (!mayPass) {
     const signIn = new URL("/sign-in", request.nextUrl);
     signIn.searchParams.set("from", pathname + search);

@@ -64,14 +64,21 @@ const scopeOfTransaction = new WeakMap<object, { userId: string; workspaceId?: s
  * and they end with the transaction. Inside a transaction that already has this scope, `work` joins it; another scope is a
  * programmer's mistake.
  */
-export async function withScope<T>(database: Database, scope: Scope | PersonScope, work: (tx: Transaction) => Promise<T>): Promise<T> {
+export async function withScope<T>(
+  database: Database,
+  scope: Scope | PersonScope,
+  work: (tx: Transaction) => Promise<T>,
+): Promise<T> {
   if (database instanceof PgTransaction) {
     const current = scopeOfTransaction.get(database);
-    if (current?.userId !== scope.userId || current.workspaceId !== scope.workspaceId) throw new Error("withScope: this transaction belongs to another scope");
+    if (current?.userId !== scope.userId || current.workspaceId !== scope.workspaceId)
+      throw new Error("withScope: this transaction belongs to another scope");
     return work(database);
   }
   return database.transaction(async (tx) => {
-    await tx.execute(sql`select set_config('app.user_id', ${scope.userId}, true), set_config('app.workspace_id', ${scope.workspaceId ?? ""}, true)`);
+    await tx.execute(
+      sql`select set_config('app.user_id', ${scope.userId}, true), set_config('app.workspace_id', ${scope.workspaceId ?? ""}, true)`,
+    );
     scopeOfTransaction.set(tx, { userId: scope.userId, workspaceId: scope.workspaceId });
     return work(tx);
   });
@@ -86,5 +93,8 @@ export async function assertBoundByRowSecurity(database: Database): Promise<void
     select current_user as name,
       (rolsuper or rolbypassrls or exists (select from pg_class where relname = 'scenarios' and relnamespace = 'public'::regnamespace and pg_has_role(current_user, relowner, 'MEMBER'))) as is_free
     from pg_roles where rolname = current_user`);
-  if (!role || role.is_free) throw new Error(`DATABASE_URL names a role (${role?.name ?? "unknown"}) that row-level security does not bind; give the application a role of its own`);
+  if (!role || role.is_free)
+    throw new Error(
+      `DATABASE_URL names a role (${role?.name ?? "unknown"}) that row-level security does not bind; give the application a role of its own`,
+    );
 }

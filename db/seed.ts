@@ -24,12 +24,25 @@ export async function seedDatabase(ownerUrl: string): Promise<"seeded" | "left a
     if (known!.people > 0 && known!.demo === 0) return "left alone";
     await addPeople(db);
     for (const [index, template] of TEMPLATES.entries()) {
-      await addScenario(db, { key: `template ${template.id}`, title: template.title, template, story: STORIES[template.id] ?? PLAIN_STORY, hoursAgo: 5 + 17 * index });
+      await addScenario(db, {
+        key: `template ${template.id}`,
+        title: template.title,
+        template,
+        story: STORIES[template.id] ?? PLAIN_STORY,
+        hoursAgo: 5 + 17 * index,
+      });
     }
     for (const [index, { title, templateId, isCopy, story }] of EXTRAS.entries()) {
       const template = templateById(templateId);
       if (!template) throw new Error(`the demo tells of a template that does not exist: ${templateId}`);
-      await addScenario(db, { key: `extra ${title}`, title, template, story, hoursAgo: 30 + 41 * index, copiedFrom: isCopy ? `template ${templateId}` : undefined });
+      await addScenario(db, {
+        key: `extra ${title}`,
+        title,
+        template,
+        story,
+        hoursAgo: 30 + 41 * index,
+        copiedFrom: isCopy ? `template ${templateId}` : undefined,
+      });
     }
     await addLinks(db);
     return "seeded";
@@ -44,10 +57,17 @@ async function addPeople(db: RootDatabase): Promise<void> {
   }
   for (const account of DEMO_ACCOUNTS) {
     const userId = demoKey(account.email);
-    const added = await db.execute(sql`insert into users (id, email, name) values (${userId}, ${account.email}, ${account.name}) on conflict do nothing returning id`);
+    const added = await db.execute(
+      sql`insert into users (id, email, name) values (${userId}, ${account.email}, ${account.name}) on conflict do nothing returning id`,
+    );
     if (added.length === 0) continue;
-    await db.execute(sql`insert into credentials (user_id, password_hash) values (${userId}, ${await hashPassword(DEMO_PASSWORD)})`);
-    const memberships = [{ workspace: account.workspace, role: account.role }, ...("alsoIn" in account ? [account.alsoIn] : [])];
+    await db.execute(
+      sql`insert into credentials (user_id, password_hash) values (${userId}, ${await hashPassword(DEMO_PASSWORD)})`,
+    );
+    const memberships = [
+      { workspace: account.workspace, role: account.role },
+      ...("alsoIn" in account ? [account.alsoIn] : []),
+    ];
     for (const [order, { workspace, role }] of memberships.entries()) {
       await db.execute(sql`
         insert into memberships (workspace_id, user_id, role, created_at) values (${demoKey(workspace)}, ${userId}, ${role}, now() + make_interval(secs => ${order}))`);
@@ -57,19 +77,39 @@ async function addPeople(db: RootDatabase): Promise<void> {
 
 type Plan = { key: string; title: string; template: Template; story: Story; hoursAgo: number; copiedFrom?: string };
 
-async function addScenario(db: RootDatabase, { key, title, template, story, hoursAgo, copiedFrom }: Plan): Promise<void> {
+async function addScenario(
+  db: RootDatabase,
+  { key, title, template, story, hoursAgo, copiedFrom }: Plan,
+): Promise<void> {
   const id = demoKey(key);
   const known = await db.execute(sql`select from scenarios where id = ${id}`);
   if (known.length > 0) return;
 
   const final = { ...template.document, title };
-  const steps = [...story.steps, { author: story.owner, message: story.finalMessage, edit: (same: ScenarioDocument) => same }];
-  const revisions: { number: number; author: DemoAccount; message: string; document: ScenarioDocument; summary: RunSummary | null; hoursAgo: number }[] = [];
+  const steps = [
+    ...story.steps,
+    { author: story.owner, message: story.finalMessage, edit: (same: ScenarioDocument) => same },
+  ];
+  const revisions: {
+    number: number;
+    author: DemoAccount;
+    message: string;
+    document: ScenarioDocument;
+    summary: RunSummary | null;
+    hoursAgo: number;
+  }[] = [];
   for (const [index, step] of steps.entries()) {
     const checked = requireValid(step.edit(final), `${title}, revision ${index + 1}`);
     const author = DEMO_ACCOUNTS.find((account) => account.email === step.author)!;
     // each revision some working days before the next
-    revisions.push({ number: index + 1, author, message: step.message, document: checked, summary: await summarise(checked), hoursAgo: hoursAgo + 53 * (steps.length - 1 - index) });
+    revisions.push({
+      number: index + 1,
+      author,
+      message: step.message,
+      document: checked,
+      summary: await summarise(checked),
+      hoursAgo: hoursAgo + 53 * (steps.length - 1 - index),
+    });
   }
   const newest = revisions.length;
   const approved = story.state === "approved" ? newest : (story.approvedNumber ?? null);
@@ -95,7 +135,10 @@ async function addScenario(db: RootDatabase, { key, title, template, story, hour
 
 function requireValid(document: ScenarioDocument, what: string): ScenarioDocument {
   const parsed = parseScenario(document);
-  if (!parsed.ok) throw new Error(`${what} is not a valid scenario: ${parsed.findings.map((finding) => `${finding.path}: ${finding.text}`).join("; ")}`);
+  if (!parsed.ok)
+    throw new Error(
+      `${what} is not a valid scenario: ${parsed.findings.map((finding) => `${finding.path}: ${finding.text}`).join("; ")}`,
+    );
   return parsed.document;
 }
 
@@ -117,7 +160,8 @@ async function addLinks(db: RootDatabase): Promise<void> {
 
 if (process.argv[1] && import.meta.url === pathToFileURL(process.argv[1]).href) {
   const { DATABASE_OWNER_URL } = process.env;
-  if (!DATABASE_OWNER_URL) throw new Error("DATABASE_OWNER_URL must be set: the seed writes as the owner of the tables");
+  if (!DATABASE_OWNER_URL)
+    throw new Error("DATABASE_OWNER_URL must be set: the seed writes as the owner of the tables");
   const outcome = await seedDatabase(DATABASE_OWNER_URL);
   console.log(outcome === "seeded" ? "demo data is in place" : "other people work in this database: no demo data");
 }

@@ -13,7 +13,10 @@ export const ERRORS = {
   "auth.refused": { status: 401, text: "E-mail and password do not belong together." },
   "access.denied": { status: 403, text: "Your role in this workspace does not include this." },
   "thing.missing": { status: 404, text: "There is nothing here, or nothing that you may see." },
-  "edit.conflict": { status: 409, text: "Someone saved a newer revision. Both versions are kept: compare them, or keep yours as a new revision." },
+  "edit.conflict": {
+    status: 409,
+    text: "Someone saved a newer revision. Both versions are kept: compare them, or keep yours as a new revision.",
+  },
   "edit.archived": { status: 409, text: "This scenario is archived. Restore it before changing it." },
   "limit.reached": { status: 429, text: "Too many attempts. Wait a little, then try again." },
   "link.unknown": { status: 404, text: "This link leads nowhere. Check that it was copied whole." },
@@ -22,8 +25,14 @@ export const ERRORS = {
   "engine.cancelled": { status: 503, text: "The run was cancelled before it ended." },
   "engine.superseded": { status: 409, text: "A newer run took the place of this one." },
   "engine.no-run": { status: 409, text: "There is no run to read from yet." },
-  "engine.too-long": { status: 422, text: "The run has more PWM periods than this address computes. Shorten it, or run it in the page." },
-  "engine.timed-out": { status: 503, text: "The run took longer than this address allows. Shorten it, or run it in the page." },
+  "engine.too-long": {
+    status: 422,
+    text: "The run has more PWM periods than this address computes. Shorten it, or run it in the page.",
+  },
+  "engine.timed-out": {
+    status: 503,
+    text: "The run took longer than this address allows. Shorten it, or run it in the page.",
+  },
   "engine.not-finite": { status: 422, text: "The run left the range of finite numbers. Check the values it names." },
   "engine.failed": { status: 500, text: "The engine stopped with a fault of its own." },
   "server.unreachable": { status: 503, text: "The server cannot be reached. Your work is kept here." },

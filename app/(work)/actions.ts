@@ -26,6 +26,12 @@ export async function revokeSession(input: { sessionId: string }): Promise<Resul
 export async function chooseWorkspace(input: { workspaceId: string }): Promise<Result<null>> {
   const workspaces = await getWorkspaces();
   if (!workspaces.some((workspace) => workspace.id === input.workspaceId)) return failure("thing.missing");
-  (await cookies()).set(WORKSPACE_COOKIE, input.workspaceId, { httpOnly: true, sameSite: "lax", secure: isSecure(), path: "/", maxAge: 365 * 24 * 3600 });
+  (await cookies()).set(WORKSPACE_COOKIE, input.workspaceId, {
+    httpOnly: true,
+    sameSite: "lax",
+    secure: isSecure(),
+    path: "/",
+    maxAge: 365 * 24 * 3600,
+  });
   return success(null);
 }

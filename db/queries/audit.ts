@@ -2,7 +2,15 @@ import { desc, eq, sql } from "drizzle-orm";
 import { withScope, type Database, type Scope, type Transaction } from "../client";
 import { audit } from "../schema/index";
 
-export type AuditRow = { id: number; actorName: string; deed: string; thingId: string | null; detail: Record<string, unknown>; correlationId: string; createdAt: Date };
+export type AuditRow = {
+  id: number;
+  actorName: string;
+  deed: string;
+  thingId: string | null;
+  detail: Record<string, unknown>;
+  correlationId: string;
+  createdAt: Date;
+};
 export type AuditEntry = { deed: string; thingId?: string; detail?: Record<string, unknown> };
 export type AuditActor = { userId: string; userName: string; workspaceId?: string; correlationId: string };
 
@@ -17,7 +25,15 @@ export async function createAuditRow(tx: Transaction, actor: AuditActor, entry: 
 export function findAuditRows(database: Database, scope: Scope, limit = 100): Promise<AuditRow[]> {
   return withScope(database, scope, (tx) =>
     tx
-      .select({ id: audit.id, actorName: audit.actorName, deed: audit.deed, thingId: audit.thingId, detail: audit.detail, correlationId: audit.correlationId, createdAt: audit.createdAt })
+      .select({
+        id: audit.id,
+        actorName: audit.actorName,
+        deed: audit.deed,
+        thingId: audit.thingId,
+        detail: audit.detail,
+        correlationId: audit.correlationId,
+        createdAt: audit.createdAt,
+      })
       .from(audit)
       .where(eq(audit.workspaceId, scope.workspaceId))
       .orderBy(desc(audit.id))

@@ -11,17 +11,27 @@ export type WorkspaceView = { id: string; name: string; role: MemberRole };
 export type MemberView = { userId: string; name: string; email: string; role: MemberRole };
 
 export async function getCredential(database: Database, email: string): Promise<Credential | null> {
-  const [row] = await database.execute<{ user_id: string; user_name: string; password_hash: string }>(sql`select * from app.find_credential(${email})`);
+  const [row] = await database.execute<{ user_id: string; user_name: string; password_hash: string }>(
+    sql`select * from app.find_credential(${email})`,
+  );
   return row ? { userId: row.user_id, userName: row.user_name, passwordHash: row.password_hash } : null;
 }
 
 /** Who holds this session, while it is neither revoked nor expired. */
 export async function getSessionHolder(database: Database, tokenHash: string): Promise<SessionHolder | null> {
-  const [row] = await database.execute<{ session_id: string; user_id: string; user_name: string; user_email: string }>(sql`select * from app.touch_session(${tokenHash})`);
-  return row ? { sessionId: row.session_id, userId: row.user_id, userName: row.user_name, userEmail: row.user_email } : null;
+  const [row] = await database.execute<{ session_id: string; user_id: string; user_name: string; user_email: string }>(
+    sql`select * from app.touch_session(${tokenHash})`,
+  );
+  return row
+    ? { sessionId: row.session_id, userId: row.user_id, userName: row.user_name, userEmail: row.user_email }
+    : null;
 }
 
-export async function createSession(database: Database, scope: PersonScope, args: { tokenHash: string; userAgent: string; address: string; lifeDays: number }): Promise<void> {
+export async function createSession(
+  database: Database,
+  scope: PersonScope,
+  args: { tokenHash: string; userAgent: string; address: string; lifeDays: number },
+): Promise<void> {
   await withScope(database, scope, (tx) =>
     tx.execute(sql`
       insert into sessions (user_id, token_hash, user_agent, address, expires_at)
@@ -37,7 +47,13 @@ export async function endSession(database: Database, tokenHash: string): Promise
 export function findSessions(database: Database, scope: PersonScope): Promise<SessionView[]> {
   return withScope(database, scope, (tx) =>
     tx
-      .select({ id: sessions.id, userAgent: sessions.userAgent, address: sessions.address, createdAt: sessions.createdAt, lastSeenAt: sessions.lastSeenAt })
+      .select({
+        id: sessions.id,
+        userAgent: sessions.userAgent,
+        address: sessions.address,
+        createdAt: sessions.createdAt,
+        lastSeenAt: sessions.lastSeenAt,
+      })
       .from(sessions)
       .where(and(eq(sessions.userId, scope.userId), isNull(sessions.revokedAt), sql`${sessions.expiresAt} > now()`))
       .orderBy(desc(sessions.lastSeenAt)),

@@ -5,9 +5,23 @@ import { withScope, type Database, type Scope } from "../client";
 import { keptDrafts, revisions, scenarios, type RunSummary } from "../schema/index";
 import { isKey, readStoredDocument } from "./stored";
 
-export type RevisionRow = { id: string; number: number; authorName: string; message: string; createdAt: Date; hasSummary: boolean };
+export type RevisionRow = {
+  id: string;
+  number: number;
+  authorName: string;
+  message: string;
+  createdAt: Date;
+  hasSummary: boolean;
+};
 export type NewestRevision = { number: number; authorName: string; createdAt: Date; document: ScenarioDocument };
-export type KeptDraft = { id: string; scenarioId: string; baseNumber: number; message: string; createdAt: Date; document: ScenarioDocument };
+export type KeptDraft = {
+  id: string;
+  scenarioId: string;
+  baseNumber: number;
+  message: string;
+  createdAt: Date;
+  document: ScenarioDocument;
+};
 
 /** The revisions of a scenario that the person sees, newest first. */
 export function findRevisions(database: Database, scope: Scope, scenarioId: string): Promise<RevisionRow[]> {
@@ -50,13 +64,26 @@ export async function insertRevision(
 export function createRevision(
   database: Database,
   scope: Scope,
-  args: { scenarioId: string; baseNumber: number; document: ScenarioDocument; message: string; summary: RunSummary | null },
+  args: {
+    scenarioId: string;
+    baseNumber: number;
+    document: ScenarioDocument;
+    message: string;
+    summary: RunSummary | null;
+  },
 ): Promise<{ id: string; number: number } | null> {
   return withScope(database, scope, async (tx) => {
     const [counted] = await tx
       .update(scenarios)
       .set({ newestNumber: sql`${scenarios.newestNumber} + 1`, state: "draft", changedAt: sql`now()` })
-      .where(and(eq(scenarios.workspaceId, scope.workspaceId), eq(scenarios.id, args.scenarioId), eq(scenarios.newestNumber, args.baseNumber), isNull(scenarios.archivedAt)))
+      .where(
+        and(
+          eq(scenarios.workspaceId, scope.workspaceId),
+          eq(scenarios.id, args.scenarioId),
+          eq(scenarios.newestNumber, args.baseNumber),
+          isNull(scenarios.archivedAt),
+        ),
+      )
       .returning({ number: scenarios.newestNumber });
     if (!counted) return null;
     const id = await insertRevision(tx, scope, { ...args, number: counted.number });
@@ -68,13 +95,21 @@ export function createRevision(
 export function requireNewestRevision(database: Database, scope: Scope, scenarioId: string): Promise<NewestRevision> {
   return withScope(database, scope, async (tx) => {
     const [newest] = await tx
-      .select({ number: revisions.number, authorName: revisions.authorName, createdAt: revisions.createdAt, document: revisions.document })
+      .select({
+        number: revisions.number,
+        authorName: revisions.authorName,
+        createdAt: revisions.createdAt,
+        document: revisions.document,
+      })
       .from(revisions)
       .where(and(eq(revisions.workspaceId, scope.workspaceId), eq(revisions.scenarioId, scenarioId)))
       .orderBy(desc(revisions.number))
       .limit(1);
     if (!newest) throw new Refusal("thing.missing");
-    return { ...newest, document: readStoredDocument(newest.document, `revision ${newest.number} of scenario ${scenarioId}`) };
+    return {
+      ...newest,
+      document: readStoredDocument(newest.document, `revision ${newest.number} of scenario ${scenarioId}`),
+    };
   });
 }
 
@@ -94,7 +129,12 @@ export function createKeptDraft(
   });
 }
 
-const ownOpenDrafts = (scope: Scope) => and(eq(keptDrafts.workspaceId, scope.workspaceId), eq(keptDrafts.authorId, scope.userId), isNull(keptDrafts.keptAsNumber));
+const ownOpenDrafts = (scope: Scope) =>
+  and(
+    eq(keptDrafts.workspaceId, scope.workspaceId),
+    eq(keptDrafts.authorId, scope.userId),
+    isNull(keptDrafts.keptAsNumber),
+  );
 const draftColumns = {
   id: keptDrafts.id,
   scenarioId: keptDrafts.scenarioId,
@@ -108,19 +148,32 @@ const draftColumns = {
 export function findKeptDrafts(database: Database, scope: Scope, scenarioId: string): Promise<KeptDraft[]> {
   if (!isKey(scenarioId)) return Promise.resolve([]);
   return withScope(database, scope, async (tx) => {
-    const rows = await tx.select(draftColumns).from(keptDrafts).where(and(ownOpenDrafts(scope), eq(keptDrafts.scenarioId, scenarioId))).orderBy(desc(keptDrafts.createdAt)).limit(20);
+    const rows = await tx
+      .select(draftColumns)
+      .from(keptDrafts)
+      .where(and(ownOpenDrafts(scope), eq(keptDrafts.scenarioId, scenarioId)))
+      .orderBy(desc(keptDrafts.createdAt))
+      .limit(20);
     return rows.map((row) => ({ ...row, document: readStoredDocument(row.document, `kept draft ${row.id}`) }));
   });
 }
 
 export function requireKeptDraft(database: Database, scope: Scope, draftId: string): Promise<KeptDraft> {
   return withScope(database, scope, async (tx) => {
-    const [row] = await tx.select(draftColumns).from(keptDrafts).where(and(ownOpenDrafts(scope), eq(keptDrafts.id, draftId)));
+    const [row] = await tx
+      .select(draftColumns)
+      .from(keptDrafts)
+      .where(and(ownOpenDrafts(scope), eq(keptDrafts.id, draftId)));
     if (!row) throw new Refusal("thing.missing");
     return { ...row, document: readStoredDocument(row.document, `kept draft ${row.id}`) };
   });
 }
 
 export async function markDraftKept(database: Database, scope: Scope, draftId: string, number: number): Promise<void> {
-  await withScope(database, scope, (tx) => tx.update(keptDrafts).set({ keptAsNumber: number }).where(and(ownOpenDrafts(scope), eq(keptDrafts.id, draftId))));
+  await withScope(database, scope, (tx) =>
+    tx
+      .update(keptDrafts)
+      .set({ keptAsNumber: number })
+      .where(and(ownOpenDrafts(scope), eq(keptDrafts.id, draftId))),
+  );
 }

@@ -11,7 +11,14 @@ import { insertRevision } from "./revisions";
 export function createScenario(
   database: Database,
   scope: Scope,
-  args: { title: string; tags: string[]; document: ScenarioDocument; message: string; summary: RunSummary | null; copiedFromId?: string },
+  args: {
+    title: string;
+    tags: string[];
+    document: ScenarioDocument;
+    message: string;
+    summary: RunSummary | null;
+    copiedFromId?: string;
+  },
 ): Promise<string> {
   return withScope(database, scope, async (tx) => {
     const [created] = await tx.execute<{ id: string }>(sql`
@@ -19,7 +26,13 @@ export function createScenario(
       values (${scope.workspaceId}, ${scope.userId}, ${args.copiedFromId ?? null}, ${args.title}, ${sql.param(args.tags, scenarios.tags)}, 1)
       returning id`);
     if (!created) throw new Refusal("access.denied");
-    await insertRevision(tx, scope, { scenarioId: created.id, number: 1, document: args.document, message: args.message, summary: args.summary });
+    await insertRevision(tx, scope, {
+      scenarioId: created.id,
+      number: 1,
+      document: args.document,
+      message: args.message,
+      summary: args.summary,
+    });
     return created.id;
   });
 }
@@ -38,7 +51,9 @@ async function changeScenario(database: Database, scope: Scope, id: string, chan
   });
 }
 
-export const changeTitle = (database: Database, scope: Scope, id: string, title: string) => changeScenario(database, scope, id, { title });
-export const changeTags = (database: Database, scope: Scope, id: string, tags: string[]) => changeScenario(database, scope, id, { tags });
+export const changeTitle = (database: Database, scope: Scope, id: string, title: string) =>
+  changeScenario(database, scope, id, { title });
+export const changeTags = (database: Database, scope: Scope, id: string, tags: string[]) =>
+  changeScenario(database, scope, id, { tags });
 export const changeArchived = (database: Database, scope: Scope, id: string, isArchived: boolean) =>
   changeScenario(database, scope, id, { archivedAt: isArchived ? sql`now()` : null });

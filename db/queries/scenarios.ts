@@ -1,13 +1,13 @@
 import { and, arrayContains, count, desc, eq, ilike, isNotNull, isNull, or, sql, type SQL } from "drizzle-orm";
-import { can, type Thing } from "@/lib/access/table";
+import { can } from "@/lib/access/table";
 import { Refusal } from "@/lib/errors";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { withScope, type Database, type Scope } from "../client";
 import { revisions, scenarios, users, type RunSummary } from "../schema/index";
+import { inWorkspace, thingOf, visibleNumber, visibleState, type ScenarioState } from "./scenario-access";
 import { isKey, readStoredDocument } from "./stored";
 
-export type { RunSummary };
-export type ScenarioState = "draft" | "inReview" | "approved" | "superseded";
+export type { RunSummary, ScenarioState };
 
 export type ScenarioRow = {
   id: string;
@@ -49,12 +49,6 @@ export type ScenarioFilter = {
   pageSize?: number;
 };
 
-/** A student sees the approved revision of what belongs to someone else; everyone else sees the newest. */
-const seesApproved = (scope: Scope) => sql<boolean>`(${scope.role === "student"} and ${scenarios.ownerId} <> ${scope.userId})`;
-const visibleNumber = (scope: Scope) => sql<number>`case when ${seesApproved(scope)} then ${scenarios.approvedNumber} else ${scenarios.newestNumber} end`;
-const visibleState = (scope: Scope) => sql<ScenarioState>`case when ${seesApproved(scope)} then 'approved' else ${scenarios.state}::text end`;
-const inWorkspace = (scope: Scope) => eq(scenarios.workspaceId, scope.workspaceId);
-
 function matches(scope: Scope, filter: ScenarioFilter): SQL | undefined {
   const word = filter.search?.trim();
   const pattern = word ? `%${word.replace(/[\\%_]/g, "\\$&")}%` : undefined;
@@ -62,17 +56,17 @@ function matches(scope: Scope, filter: ScenarioFilter): SQL | undefined {
   return and(
     inWorkspace(scope),
     filter.archived ? isNotNull(scenarios.archivedAt) : isNull(scenarios.archivedAt),
-    pattern ? or(ilike(scenarios.title, pattern), sql`exists (select from unnest(${scenarios.tags}) as tag where tag ilike ${pattern})`) : undefined,
+    pattern
+      ? or(
+          ilike(scenarios.title, pattern),
+          sql`exists (select from unnest(${scenarios.tags}) as tag where tag ilike ${pattern})`,
+        )
+      : undefined,
     owner === undefined ? undefined : isKey(owner) ? eq(scenarios.ownerId, owner) : sql`false`,
     filter.state ? sql`${visibleState(scope)} = ${filter.state}` : undefined,
     filter.tag ? arrayContains(scenarios.tags, [filter.tag]) : undefined,
   );
 }
-
-const thingOf = (scope: Scope, row: { ownerId: string; approvedNumber: number | null; archivedAt: Date | null }): Thing => ({
-  isOwn: row.ownerId === scope.userId,
-  hasApproved: row.approvedNumber !== null && row.archivedAt === null,
-});
 
 /** The scenario table: filtered, newest change first, one page, with the figures stored at the last save. */
 export function findScenarios(database: Database, scope: Scope, filter: ScenarioFilter): Promise<ScenarioList> {
@@ -121,11 +115,25 @@ export function findScenarios(database: Database, scope: Scope, filter: Scenario
 /** Counts, owners and tags of everything the person sees: what the filters offer. */
 async function describeAll(tx: Database, scope: Scope): Promise<Pick<ScenarioList, "counts" | "owners" | "tags">> {
   const all = await tx
-    .select({ ownerId: scenarios.ownerId, ownerName: users.name, state: visibleState(scope), tags: scenarios.tags, archivedAt: scenarios.archivedAt })
+    .select({
+      ownerId: scenarios.ownerId,
+      ownerName: users.name,
+      state: visibleState(scope),
+      tags: scenarios.tags,
+      archivedAt: scenarios.archivedAt,
+    })
     .from(scenarios)
     .leftJoin(users, eq(users.id, scenarios.ownerId))
     .where(inWorkspace(scope));
-  const counts: ScenarioList["counts"] = { all: 0, mine: 0, archived: 0, draft: 0, inReview: 0, approved: 0, superseded: 0 };
+  const counts: ScenarioList["counts"] = {
+    all: 0,
+    mine: 0,
+    archived: 0,
+    draft: 0,
+    inReview: 0,
+    approved: 0,
+    superseded: 0,
+  };
   const owners = new Map<string, string>();
   const tags = new Set<string>();
   for (const row of all) {
@@ -140,10 +148,21 @@ async function describeAll(tx: Database, scope: Scope): Promise<Pick<ScenarioLis
     if (row.ownerId === scope.userId) counts.mine += 1;
   }
   const byName = (a: { name: string }, b: { name: string }) => a.name.localeCompare(b.name, "en");
-  return { counts, owners: [...owners].map(([id, name]) => ({ id, name })).sort(byName), tags: [...tags].sort((a, b) => a.localeCompare(b, "en")) };
+  return {
+    counts,
+    owners: [...owners].map(([id, name]) => ({ id, name })).sort(byName),
+    tags: [...tags].sort((a, b) => a.localeCompare(b, "en")),
+  };
 }
 
-export type RevisionView = { id: string; number: number; document: ScenarioDocument; authorName: string; message: string; createdAt: Date };
+export type RevisionView = {
+  id: string;
+  number: number;
+  document: ScenarioDocument;
+  authorName: string;
+  message: string;
+  createdAt: Date;
+};
 
 export type ScenarioView = {
   id: string;
@@ -193,7 +212,10 @@ export function requireScenario(database: Database, scope: Scope, id: string, nu
         summary: revisions.summary,
       })
       .from(scenarios)
-      .innerJoin(revisions, and(eq(revisions.scenarioId, scenarios.id), eq(revisions.number, number ?? visibleNumber(scope))))
+      .innerJoin(
+        revisions,
+        and(eq(revisions.scenarioId, scenarios.id), eq(revisions.number, number ?? visibleNumber(scope))),
+      )
       .leftJoin(users, eq(users.id, scenarios.ownerId))
       .where(and(inWorkspace(scope), eq(scenarios.id, id)));
     if (!found) throw new Refusal("thing.missing");
@@ -203,26 +225,15 @@ export function requireScenario(database: Database, scope: Scope, id: string, nu
       ...scenario,
       ownerName: found.ownerName ?? "Former member",
       isArchived: archivedAt !== null,
-      revision: { ...found.revision, document: readStoredDocument(found.revision.document, `revision ${found.revision.id}`) },
+      revision: {
+        ...found.revision,
+        document: readStoredDocument(found.revision.document, `revision ${found.revision.id}`),
+      },
       summary: found.summary,
       mayEdit: archivedAt === null && can(scope.role, "revision.save", thing),
       mayShare: can(scope.role, "share.make", thing),
       mayArchive: can(scope.role, "scenario.archive", thing),
       mayDuplicate: can(scope.role, "scenario.duplicate", thing),
     };
-  });
-}
-
-export type ScenarioThing = Thing & { id: string; isArchived: boolean; newestNumber: number };
-
-/** What `can` needs to know about a scenario; throws Refusal `thing.missing`. */
-export function requireScenarioThing(database: Database, scope: Scope, id: string): Promise<ScenarioThing> {
-  return withScope(database, scope, async (tx) => {
-    const [row] = await tx
-      .select({ id: scenarios.id, ownerId: scenarios.ownerId, approvedNumber: scenarios.approvedNumber, archivedAt: scenarios.archivedAt, newestNumber: scenarios.newestNumber })
-      .from(scenarios)
-      .where(and(inWorkspace(scope), eq(scenarios.id, id)));
-    if (!row) throw new Refusal("thing.missing");
-    return { ...thingOf(scope, row), id: row.id, isArchived: row.archivedAt !== null, newestNumber: row.newestNumber };
   });
 }

@@ -23,7 +23,14 @@ export type ShareLinkView = {
   mayRevoke: boolean;
 };
 
-export type SharedScenario = { title: string; document: ScenarioDocument; revisionNumber: number; label: string; follows: "pinned" | "newest"; workspaceName: string };
+export type SharedScenario = {
+  title: string;
+  document: ScenarioDocument;
+  revisionNumber: number;
+  label: string;
+  follows: "pinned" | "newest";
+  workspaceName: string;
+};
 
 /** The links of a scenario, newest first. No token and no hash: the application's role cannot read them. */
 export function findShareLinks(database: Database, scope: Scope, scenarioId: string): Promise<ShareLinkView[]> {
@@ -89,7 +96,12 @@ export function requireLinkThing(database: Database, scope: Scope, linkId: strin
   });
 }
 
-async function changeLink(database: Database, scope: Scope, linkId: string, change: Parameters<typeof setOf>[0]): Promise<void> {
+async function changeLink(
+  database: Database,
+  scope: Scope,
+  linkId: string,
+  change: Parameters<typeof setOf>[0],
+): Promise<void> {
   await withScope(database, scope, async (tx) => {
     const changed = await tx
       .update(shareLinks)
@@ -99,12 +111,23 @@ async function changeLink(database: Database, scope: Scope, linkId: string, chan
     if (changed.length === 0) throw new Refusal("thing.missing");
   });
 }
-const setOf = (change: { expiresAt: Date | null } | { revoke: true }) => ("revoke" in change ? { revokedAt: sql`coalesce(${shareLinks.revokedAt}, now())` } : change);
+const setOf = (change: { expiresAt: Date | null } | { revoke: true }) =>
+  "revoke" in change ? { revokedAt: sql`coalesce(${shareLinks.revokedAt}, now())` } : change;
 
-export const changeLinkExpiry = (database: Database, scope: Scope, linkId: string, expiresAt: Date | null) => changeLink(database, scope, linkId, { expiresAt });
-export const revokeLink = (database: Database, scope: Scope, linkId: string) => changeLink(database, scope, linkId, { revoke: true });
+export const changeLinkExpiry = (database: Database, scope: Scope, linkId: string, expiresAt: Date | null) =>
+  changeLink(database, scope, linkId, { expiresAt });
+export const revokeLink = (database: Database, scope: Scope, linkId: string) =>
+  changeLink(database, scope, linkId, { revoke: true });
 
-type Opening = { status: "open" | "unknown" | "expired" | "revoked"; title: string; document: unknown; revision_number: number; label: string; follows: "pinned" | "newest"; workspace_name: string };
+type Opening = {
+  status: "open" | "unknown" | "expired" | "revoked";
+  title: string;
+  document: unknown;
+  revision_number: number;
+  label: string;
+  follows: "pinned" | "newest";
+  workspace_name: string;
+};
 
 /** What a link opens, counted as one opening. For everyone, signed in or not: the function in PostgreSQL answers what the link names and no more. */
 export async function openShareLinkByHash(database: Database, tokenHash: string): Promise<Result<SharedScenario>> {

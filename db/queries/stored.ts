@@ -4,7 +4,10 @@ import { parseScenario, type ScenarioDocument } from "@/lib/scenario/schema";
 /** A stored document, checked by the same schema that let it in. One that no longer passes is a fault of ours, said with its revision and paths. */
 export function readStoredDocument(value: unknown, where: string): ScenarioDocument {
   const parsed = parseScenario(value);
-  if (!parsed.ok) throw new Error(`${errorText("server.failed")} ${where} does not pass the scenario schema: ${parsed.findings.map((finding) => finding.path).join(", ")}`);
+  if (!parsed.ok)
+    throw new Error(
+      `${errorText("server.failed")} ${where} does not pass the scenario schema: ${parsed.findings.map((finding) => finding.path).join(", ")}`,
+    );
   return parsed.document;
 }
 

@@ -10,7 +10,9 @@ export const audit = pgTable(
     id: bigint("id", { mode: "number" }).primaryKey().generatedAlwaysAsIdentity(),
     /** Null for what belongs to a person and no workspace: signing in, ending a session. */
     workspaceId: uuid("workspace_id").references(() => workspaces.id, { onDelete: "restrict" }),
-    actorId: uuid("actor_id").notNull().references(() => users.id, { onDelete: "restrict" }),
+    actorId: uuid("actor_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "restrict" }),
     actorName: text("actor_name").notNull(),
     deed: text("deed").notNull(),
     thingId: text("thing_id"),

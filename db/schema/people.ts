@@ -21,7 +21,9 @@ export const users = pgTable(
 
 /** Password hashes (argon2id, PHC text). The app role may not read this table: app.find_credential does. */
 export const credentials = pgTable("credentials", {
-  userId: uuid("user_id").primaryKey().references(() => users.id, { onDelete: "cascade" }),
+  userId: uuid("user_id")
+    .primaryKey()
+    .references(() => users.id, { onDelete: "cascade" }),
   passwordHash: text("password_hash").notNull(),
   changedAt: moment("changed_at").notNull().defaultNow(),
 });
@@ -34,7 +36,9 @@ export const sessions = pgTable(
   "sessions",
   {
     id: key(),
-    userId: uuid("user_id").notNull().references(() => users.id, { onDelete: "cascade" }),
+    userId: uuid("user_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "cascade" }),
     tokenHash: text("token_hash").notNull(),
     userAgent: text("user_agent").notNull(),
     /** Network address at sign-in: the coarse place shown in the list of sessions. */

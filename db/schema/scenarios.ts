@@ -24,12 +24,19 @@ export const scenarios = pgTable(
   "scenarios",
   {
     id: key(),
-    workspaceId: uuid("workspace_id").notNull().references(() => workspaces.id, { onDelete: "restrict" }),
-    ownerId: uuid("owner_id").notNull().references(() => users.id, { onDelete: "restrict" }),
+    workspaceId: uuid("workspace_id")
+      .notNull()
+      .references(() => workspaces.id, { onDelete: "restrict" }),
+    ownerId: uuid("owner_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "restrict" }),
     /** The scenario this one was copied from; for a student the only way to have one. */
     copiedFromId: uuid("copied_from_id"),
     title: text("title").notNull(),
-    tags: text("tags").array().notNull().default(sql`'{}'`),
+    tags: text("tags")
+      .array()
+      .notNull()
+      .default(sql`'{}'`),
     /** State of the newest revision. */
     state: scenarioState("state").notNull().default("draft"),
     newestNumber: integer("newest_number").notNull(),
@@ -42,7 +49,11 @@ export const scenarios = pgTable(
   (table) => [
     // target of the two-column keys below: a revision or link cannot sit in another workspace than its scenario
     unique("scenarios_id_workspace_unique").on(table.id, table.workspaceId),
-    foreignKey({ name: "scenarios_copied_from_fk", columns: [table.copiedFromId], foreignColumns: [table.id] }).onDelete("set null"),
+    foreignKey({
+      name: "scenarios_copied_from_fk",
+      columns: [table.copiedFromId],
+      foreignColumns: [table.id],
+    }).onDelete("set null"),
     // serves the scenario table: one workspace, newest change first
     index("scenarios_by_workspace_changed").on(table.workspaceId, table.changedAt.desc()),
     // serves the owner filter
@@ -63,7 +74,9 @@ export const revisions = pgTable(
     scenarioId: uuid("scenario_id").notNull(),
     number: integer("number").notNull(),
     document: jsonb("document").$type<ScenarioDocument>().notNull(),
-    authorId: uuid("author_id").notNull().references(() => users.id, { onDelete: "restrict" }),
+    authorId: uuid("author_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "restrict" }),
     /** The author's name when saving: stays readable after the person has left. */
     authorName: text("author_name").notNull(),
     message: text("message").notNull().default(""),
@@ -73,7 +86,11 @@ export const revisions = pgTable(
   (table) => [
     // serves "revision n of this scenario" and refuses a second n
     unique("revisions_scenario_number_unique").on(table.scenarioId, table.number),
-    foreignKey({ name: "revisions_scenario_fk", columns: [table.scenarioId, table.workspaceId], foreignColumns: [scenarios.id, scenarios.workspaceId] }).onDelete("restrict"),
+    foreignKey({
+      name: "revisions_scenario_fk",
+      columns: [table.scenarioId, table.workspaceId],
+      foreignColumns: [scenarios.id, scenarios.workspaceId],
+    }).onDelete("restrict"),
     check("revisions_number_is_counted", sql`${table.number} >= 1`),
   ],
 );
@@ -85,7 +102,9 @@ export const keptDrafts = pgTable(
     id: key(),
     workspaceId: uuid("workspace_id").notNull(),
     scenarioId: uuid("scenario_id").notNull(),
-    authorId: uuid("author_id").notNull().references(() => users.id, { onDelete: "cascade" }),
+    authorId: uuid("author_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "cascade" }),
     /** The revision the author had started from. */
     baseNumber: integer("base_number").notNull(),
     document: jsonb("document").$type<ScenarioDocument>().notNull(),
@@ -95,7 +114,11 @@ export const keptDrafts = pgTable(
     createdAt: createdAt(),
   },
   (table) => [
-    foreignKey({ name: "kept_drafts_scenario_fk", columns: [table.scenarioId, table.workspaceId], foreignColumns: [scenarios.id, scenarios.workspaceId] }).onDelete("cascade"),
+    foreignKey({
+      name: "kept_drafts_scenario_fk",
+      columns: [table.scenarioId, table.workspaceId],
+      foreignColumns: [scenarios.id, scenarios.workspaceId],
+    }).onDelete("cascade"),
     // serves "my kept drafts of this scenario"
     index("kept_drafts_by_scenario_author").on(table.scenarioId, table.authorId, table.createdAt.desc()),
   ],

@@ -15,7 +15,9 @@ export const shareLinks = pgTable(
     label: text("label").notNull(),
     /** The pinned revision; null follows the newest. */
     revisionNumber: integer("revision_number"),
-    makerId: uuid("maker_id").notNull().references(() => users.id, { onDelete: "restrict" }),
+    makerId: uuid("maker_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "restrict" }),
     createdAt: createdAt(),
     expiresAt: moment("expires_at"),
     revokedAt: moment("revoked_at"),
@@ -27,8 +29,16 @@ export const shareLinks = pgTable(
     uniqueIndex("share_links_token_hash_unique").on(table.tokenHash),
     // serves the list of a scenario's links
     index("share_links_by_scenario").on(table.scenarioId, table.createdAt.desc()),
-    foreignKey({ name: "share_links_scenario_fk", columns: [table.scenarioId, table.workspaceId], foreignColumns: [scenarios.id, scenarios.workspaceId] }).onDelete("cascade"),
-    foreignKey({ name: "share_links_revision_fk", columns: [table.scenarioId, table.revisionNumber], foreignColumns: [revisions.scenarioId, revisions.number] }).onDelete("restrict"),
+    foreignKey({
+      name: "share_links_scenario_fk",
+      columns: [table.scenarioId, table.workspaceId],
+      foreignColumns: [scenarios.id, scenarios.workspaceId],
+    }).onDelete("cascade"),
+    foreignKey({
+      name: "share_links_revision_fk",
+      columns: [table.scenarioId, table.revisionNumber],
+      foreignColumns: [revisions.scenarioId, revisions.number],
+    }).onDelete("restrict"),
     check("share_links_label_has_length", sql`char_length(${table.label}) between 1 and 80`),
     check("share_links_hash_is_sha256", sql`${table.tokenHash} ~ '^[0-9a-f]{64}$'`),
   ],

@@ -15,8 +15,12 @@ export const workspaces = pgTable("workspaces", {
 export const memberships = pgTable(
   "memberships",
   {
-    workspaceId: uuid("workspace_id").notNull().references(() => workspaces.id, { onDelete: "cascade" }),
-    userId: uuid("user_id").notNull().references(() => users.id, { onDelete: "cascade" }),
+    workspaceId: uuid("workspace_id")
+      .notNull()
+      .references(() => workspaces.id, { onDelete: "cascade" }),
+    userId: uuid("user_id")
+      .notNull()
+      .references(() => users.id, { onDelete: "cascade" }),
     /** The least role is the default: whoever comes in by a way that names none can do least. */
     role: memberRole("role").notNull().default("student"),
     createdAt: createdAt(),

@@ -7,12 +7,24 @@ import type { MemberRole } from "./table";
 export const DEMO_PASSWORD = "still between tides";
 export const DEMO_WORKSPACES = { home: "Low Meadow Waterworks", away: "North Quay Cranes" } as const;
 
-export type DemoAccount = { email: string; name: string; workspace: keyof typeof DEMO_WORKSPACES; role: MemberRole; alsoIn?: { workspace: keyof typeof DEMO_WORKSPACES; role: MemberRole } };
+export type DemoAccount = {
+  email: string;
+  name: string;
+  workspace: keyof typeof DEMO_WORKSPACES;
+  role: MemberRole;
+  alsoIn?: { workspace: keyof typeof DEMO_WORKSPACES; role: MemberRole };
+};
 
 export const DEMO_ACCOUNTS = [
   { email: "admin@lowmeadow.example.org", name: "Maren Tollow", workspace: "home", role: "admin" },
   // a lead here who only designs there: one person, two roles
-  { email: "lead@lowmeadow.example.org", name: "Ilvar Quennesk", workspace: "home", role: "lead", alsoIn: { workspace: "away", role: "designer" } },
+  {
+    email: "lead@lowmeadow.example.org",
+    name: "Ilvar Quennesk",
+    workspace: "home",
+    role: "lead",
+    alsoIn: { workspace: "away", role: "designer" },
+  },
   { email: "designer@lowmeadow.example.org", name: "Tessa Arkwold", workspace: "home", role: "designer" },
   { email: "second-designer@lowmeadow.example.org", name: "Jorun Paskell", workspace: "home", role: "designer" },
   { email: "trainer@lowmeadow.example.org", name: "Odile Frammer", workspace: "home", role: "trainer" },

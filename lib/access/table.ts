@@ -15,8 +15,16 @@ export type Role = (typeof ROLES)[number];
 export type Reach = "all" | "approved" | "own" | "none";
 
 type Row = Record<Role, Reach>;
-const row = (admin: Reach, lead: Reach, designer: Reach, trainer: Reach, student: Reach, guest: Reach): Row => ({ admin, lead, designer, trainer, student, guest });
+const row = (admin: Reach, lead: Reach, designer: Reach, trainer: Reach, student: Reach, guest: Reach): Row => ({
+  admin,
+  lead,
+  designer,
+  trainer,
+  student,
+  guest,
+});
 
+// prettier-ignore
 export const ACCESS = {
   //                          admin    lead    designer trainer student     guest
   "workspace.read":       row("all",  "all",  "all",  "all",  "all",      "none"),

@@ -29,7 +29,14 @@ export const getScope = cache(async (): Promise<Scope | null> => {
   const chosen = jar.get(WORKSPACE_COOKIE)?.value;
   const workspace = workspaces.find((one) => one.id === chosen) ?? workspaces[0];
   if (!person || !workspace) return null;
-  return { userId: person.userId, userName: person.userName, workspaceId: workspace.id, workspaceName: workspace.name, role: workspace.role, correlationId: person.correlationId };
+  return {
+    userId: person.userId,
+    userName: person.userName,
+    workspaceId: workspace.id,
+    workspaceName: workspace.name,
+    role: workspace.role,
+    correlationId: person.correlationId,
+  };
 });
 
 /** For pages: the scope, or on to /sign-in, which comes back here afterwards. */

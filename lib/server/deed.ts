@@ -9,7 +9,13 @@ import { findingsOf } from "./findings";
 import { takeAttempt, type LimitName } from "./limits";
 import { logFault } from "./log";
 
-type Context<In, Known extends Thing, Prepared> = { tx: Transaction; scope: Scope; input: In; thing: Known; prepared: Prepared };
+type Context<In, Known extends Thing, Prepared> = {
+  tx: Transaction;
+  scope: Scope;
+  input: In;
+  thing: Known;
+  prepared: Prepared;
+};
 
 /** What one deed is made of. `defineDeed` puts the steps in their order, so that none can be left out. */
 export type DeedParts<Schema extends z.ZodType, Known extends Thing, Prepared, Out> = {
@@ -22,7 +28,10 @@ export type DeedParts<Schema extends z.ZodType, Known extends Thing, Prepared, O
   prepare?: (context: { db: RootDatabase; scope: Scope; input: z.output<Schema> }) => Promise<Prepared>;
   run: (context: Context<z.output<Schema>, Known, Prepared>) => Promise<Result<Out>>;
   /** What the audit row names; left out for reading, which leaves no row. */
-  audit?: (context: { input: z.output<Schema>; result: Result<Out> }) => { thingId?: string; detail?: Record<string, unknown> };
+  audit?: (context: { input: z.output<Schema>; result: Result<Out> }) => {
+    thingId?: string;
+    detail?: Record<string, unknown>;
+  };
 };
 
 /** A deed as tests and actions call it. A null scope is a person who is not signed in. */
@@ -32,7 +41,9 @@ export type DeedFunction<In, Out> = (db: RootDatabase, scope: Scope | null, inpu
  * parse -> actor -> can -> transaction { thing, can, run, audit row } -> Result. A Refusal thrown inside rolls back and
  * becomes the Result; a Result that `run` returns is committed, refused or not (a conflict keeps the draft it answers with).
  */
-export function defineDeed<Schema extends z.ZodType, Known extends Thing, Prepared, Out>(parts: DeedParts<Schema, Known, Prepared, Out>): DeedFunction<z.input<Schema>, Out> {
+export function defineDeed<Schema extends z.ZodType, Known extends Thing, Prepared, Out>(
+  parts: DeedParts<Schema, Known, Prepared, Out>,
+): DeedFunction<z.input<Schema>, Out> {
   return async (db, scope, input) => {
     const parsed = await parts.input.safeParseAsync(input);
     if (!scope) return failure("auth.required");
@@ -71,7 +82,9 @@ export function defineDeed<Schema extends z.ZodType, Known extends Thing, Prepar
 export function refusalOf(cause: unknown, deed: string, correlationId: string): Result<never> {
   if (cause instanceof Refusal) return failure(cause.code, { findings: cause.findings, detail: cause.detail });
   logFault("deed failed", { deed, correlationId }, cause);
-  return failure(sqlStateOf(cause) === INSUFFICIENT_PRIVILEGE ? "access.denied" : "server.failed", { detail: { correlationId } });
+  return failure(sqlStateOf(cause) === INSUFFICIENT_PRIVILEGE ? "access.denied" : "server.failed", {
+    detail: { correlationId },
+  });
 }
 
 // PostgreSQL Appendix A, class 42

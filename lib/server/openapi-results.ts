@@ -10,7 +10,8 @@ const closed = (properties: Record<string, Schema>, optional: string[] = []): Sc
   additionalProperties: false,
 });
 const listOf = (items: Schema): Schema => ({ type: "array", items });
-const named = (unit: string, names: string[], make: (description: string) => Schema): Record<string, Schema> => Object.fromEntries(names.map((name) => [name, make(unit)]));
+const named = (unit: string, names: string[], make: (description: string) => Schema): Record<string, Schema> =>
+  Object.fromEntries(names.map((name) => [name, make(unit)]));
 
 const legState: Schema = { enum: ["high channel", "low channel", "high diode", "low diode", "open"] };
 
@@ -21,7 +22,11 @@ const instant = closed({
   speedRadPerS: number("rad/s"),
   ...named("V", ["busV", "terminalAV", "terminalBV", "senseAV"], number),
   ...named("A", ["topAA", "topBA", "bottomAA", "bottomBA", "supplyA", "bridgeA"], number),
-  ...named("V; null where the site or a missing reference has none", ["senseBV", "outAV", "outBV", "differenceV", "combinedV"], numberOrNull),
+  ...named(
+    "V; null where the site or a missing reference has none",
+    ["senseBV", "outAV", "outBV", "differenceV", "combinedV"],
+    numberOrNull,
+  ),
   state: closed({ A: legState, B: legState }),
 });
 
@@ -41,21 +46,40 @@ const conversion = closed({
 });
 
 const figures = closed({
-  ...named("A", ["motorMeanA", "motorRmsA", "motorPeakA", "motorRippleA", "topARmsA", "topBRmsA", "supplyMeanA"], number),
+  ...named(
+    "A",
+    ["motorMeanA", "motorRmsA", "motorPeakA", "motorRippleA", "topARmsA", "topBRmsA", "supplyMeanA"],
+    number,
+  ),
   ...named("W", ["copperW", "switchesW", "mechanicalW", "inputW"], number),
   ...named("W; null where the site has none", ["shuntAW", "shuntBW"], numberOrNull),
   speedMeanRadPerS: number("rad/s"),
   torqueMeanNm: number("N m"),
-  ...named("V; null where there is no such output", ["outAMeanV", "outBMeanV", "differenceMeanV", "combinedMeanV", "headroomV"], numberOrNull),
+  ...named(
+    "V; null where there is no such output",
+    ["outAMeanV", "outBMeanV", "differenceMeanV", "combinedMeanV", "headroomV"],
+    numberOrNull,
+  ),
   clippedShare: number("0 to 1"),
-  ...named("A; null without a conversion in the window", ["reconstructionErrorMeanA", "reconstructionErrorMaxA"], numberOrNull),
+  ...named(
+    "A; null without a conversion in the window",
+    ["reconstructionErrorMeanA", "reconstructionErrorMaxA"],
+    numberOrNull,
+  ),
   busMaxV: number("V"),
   energyResidualShare: numberOrNull("share; null when a stall removes kinetic energy"),
   commutationRippleHz: numberOrNull("Hz"),
 });
 
 const notice = closed(
-  { code: { type: "string" }, severity: { enum: ["fault", "caution", "note"] }, title: { type: "string" }, text: { type: "string" }, timeS: number("s"), path: { type: "string" } },
+  {
+    code: { type: "string" },
+    severity: { enum: ["fault", "caution", "note"] },
+    title: { type: "string" },
+    text: { type: "string" },
+    timeS: number("s"),
+    path: { type: "string" },
+  },
   ["timeS", "path"],
 );
 

@@ -11,7 +11,18 @@ export function scenarioJsonSchema(): Record<string, unknown> {
   return { $schema, $id: `${applicationUrl()}/api/v1/schema/scenario`, title: "Slackwater scenario", ...schema };
 }
 
-const REFUSALS: ErrorCode[] = ["input.not-json", "auth.required", "access.denied", "input.too-large", "input.media-type", "input.invalid", "engine.too-long", "limit.reached", "engine.failed", "engine.timed-out"];
+const REFUSALS: ErrorCode[] = [
+  "input.not-json",
+  "auth.required",
+  "access.denied",
+  "input.too-large",
+  "input.media-type",
+  "input.invalid",
+  "engine.too-long",
+  "limit.reached",
+  "engine.failed",
+  "engine.timed-out",
+];
 
 /** One response per HTTP status; codes that share a status are told apart by `code`. */
 function problemResponses(codes: ErrorCode[]): Record<string, unknown> {
@@ -20,7 +31,10 @@ function problemResponses(codes: ErrorCode[]): Record<string, unknown> {
   return Object.fromEntries(
     [...byStatus].map(([status, alike]) => [
       String(status),
-      { description: alike.map((code) => `${code}: ${errorText(code)}`).join(" "), content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } } },
+      {
+        description: alike.map((code) => `${code}: ${errorText(code)}`).join(" "),
+        content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } },
+      },
     ]),
   );
 }
@@ -31,7 +45,12 @@ export function openApiDocument(): Record<string, unknown> {
   const ref = (name: string) => ({ $ref: `#/components/schemas/${name}` });
   return {
     openapi: "3.1.0",
-    info: { title: "Slackwater", version: "1", description: "Simulates a PWM H-bridge, its motor and the sensing of its current. All quantities in SI base units; field names end in their unit." },
+    info: {
+      title: "Slackwater",
+      version: "1",
+      description:
+        "Simulates a PWM H-bridge, its motor and the sensing of its current. All quantities in SI base units; field names end in their unit.",
+    },
     servers: [{ url: applicationUrl() }],
     paths: {
       "/api/v1/simulations": {
@@ -40,8 +59,14 @@ export function openApiDocument(): Record<string, unknown> {
           summary: "Simulate a scenario document",
           description: `Up to ${SIMULATION_LIMITS.periodCount} PWM periods, ${SIMULATION_LIMITS.conversionCount} conversions, ${SIMULATION_LIMITS.atCount} instants and ${SIMULATION_LIMITS.bodyBytes} bytes.`,
           security: [{ session: [] }],
-          requestBody: { required: true, content: { "application/json": { schema: { oneOf: [ref("SimulationRequest"), ref("Scenario")] } } } },
-          responses: { "200": { description: "The run's results", content: { "application/json": { schema: ref("Simulation") } } }, ...problemResponses(REFUSALS) },
+          requestBody: {
+            required: true,
+            content: { "application/json": { schema: { oneOf: [ref("SimulationRequest"), ref("Scenario")] } } },
+          },
+          responses: {
+            "200": { description: "The run's results", content: { "application/json": { schema: ref("Simulation") } } },
+            ...problemResponses(REFUSALS),
+          },
         },
       },
       "/api/v1/schema/scenario": {
@@ -49,7 +74,12 @@ export function openApiDocument(): Record<string, unknown> {
           operationId: "readScenarioSchema",
           summary: "The JSON Schema of a scenario document",
           security: [],
-          responses: { "200": { description: "JSON Schema 2020-12", content: { "application/schema+json": { schema: { type: "object" } } } } },
+          responses: {
+            "200": {
+              description: "JSON Schema 2020-12",
+              content: { "application/schema+json": { schema: { type: "object" } } },
+            },
+          },
         },
       },
       "/api/v1/openapi.json": {
@@ -57,17 +87,34 @@ export function openApiDocument(): Record<string, unknown> {
           operationId: "readDescription",
           summary: "This description",
           security: [],
-          responses: { "200": { description: "OpenAPI 3.1", content: { "application/json": { schema: { type: "object" } } } } },
+          responses: {
+            "200": { description: "OpenAPI 3.1", content: { "application/json": { schema: { type: "object" } } } },
+          },
         },
       },
     },
     components: {
-      securitySchemes: { session: { type: "apiKey", in: "cookie", name: `${applicationUrl().startsWith("https:") ? "__Secure-" : ""}authjs.session-token`, description: "The cookie of a signed-in browser." } },
+      securitySchemes: {
+        session: {
+          type: "apiKey",
+          in: "cookie",
+          name: `${applicationUrl().startsWith("https:") ? "__Secure-" : ""}authjs.session-token`,
+          description: "The cookie of a signed-in browser.",
+        },
+      },
       schemas: {
         Scenario: scenario,
         SimulationRequest: {
           type: "object",
-          properties: { document: ref("Scenario"), at: { type: "array", items: { type: "number", minimum: 0 }, maxItems: SIMULATION_LIMITS.atCount, description: "Instants in s, 0 to run.durationS" } },
+          properties: {
+            document: ref("Scenario"),
+            at: {
+              type: "array",
+              items: { type: "number", minimum: 0 },
+              maxItems: SIMULATION_LIMITS.atCount,
+              description: "Instants in s, 0 to run.durationS",
+            },
+          },
           required: ["document"],
           additionalProperties: false,
         },

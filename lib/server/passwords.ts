@@ -5,7 +5,8 @@ import { hash, verify } from "@node-rs/argon2";
 const COST = { memoryCost: 19_456, timeCost: 2, parallelism: 1 } as const;
 
 export const hashPassword = (password: string): Promise<string> => hash(password, COST);
-export const verifyPassword = (passwordHash: string, password: string): Promise<boolean> => verify(passwordHash, password);
+export const verifyPassword = (passwordHash: string, password: string): Promise<boolean> =>
+  verify(passwordHash, password);
 export type VerifyPassword = typeof verifyPassword;
 
 let dummy: Promise<string> | undefined;

@@ -15,7 +15,11 @@ export async function openShareLink(db: RootDatabase, tokenPlain: string): Promi
 }
 
 /** The same for a visitor from outside: limited per address, so that tokens cannot be tried out. */
-export async function openShareLinkFrom(db: RootDatabase, address: string, tokenPlain: string): Promise<Result<SharedScenario>> {
+export async function openShareLinkFrom(
+  db: RootDatabase,
+  address: string,
+  tokenPlain: string,
+): Promise<Result<SharedScenario>> {
   const attempt = await takeAttempt(db, "link.open", address);
   return attempt.ok ? openShareLink(db, tokenPlain) : attempt;
 }

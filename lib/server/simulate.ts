@@ -22,7 +22,9 @@ export function readSimulationRequest(body: unknown): Result<SimulationRequest> 
   const isWrapped = typeof body === "object" && body !== null && "document" in body;
   const findings: Finding[] = [];
   if (isWrapped) {
-    for (const name of Object.keys(body)) if (name !== "document" && name !== "at") findings.push({ path: name, code: "input.unknown", text: "Unknown field; there are document and at." });
+    for (const name of Object.keys(body))
+      if (name !== "document" && name !== "at")
+        findings.push({ path: name, code: "input.unknown", text: "Unknown field; there are document and at." });
   }
   const parsed = parseScenario(isWrapped ? body.document : body);
   if (!parsed.ok) return failure("input.invalid", { findings: [...findings, ...parsed.findings] });
@@ -49,14 +51,20 @@ export function readSimulationRequest(body: unknown): Result<SimulationRequest> 
 
 function findAtFaults(at: unknown, durationS: number): Finding[] {
   if (!Array.isArray(at)) return [{ path: "at", code: "input.invalid", text: "A list of times in seconds." }];
-  if (at.length > SIMULATION_LIMITS.atCount) return [{ path: "at", code: "input.invalid", text: `At most ${SIMULATION_LIMITS.atCount} times.` }];
+  if (at.length > SIMULATION_LIMITS.atCount)
+    return [{ path: "at", code: "input.invalid", text: `At most ${SIMULATION_LIMITS.atCount} times.` }];
   return at.flatMap((time: unknown, index) =>
-    typeof time === "number" && time >= 0 && time <= durationS ? [] : [{ path: `at.${index}`, code: "input.invalid", text: `A time from 0 to ${durationS} s, the run's duration.` }],
+    typeof time === "number" && time >= 0 && time <= durationS
+      ? []
+      : [{ path: `at.${index}`, code: "input.invalid", text: `A time from 0 to ${durationS} s, the run's duration.` }],
   );
 }
 
 /** Runs the engine in slices, so that the server goes on answering others; stops when the caller has gone or the time is up. */
-export async function runSimulation({ document, at }: SimulationRequest, signal: AbortSignal): Promise<Result<Simulation>> {
+export async function runSimulation(
+  { document, at }: SimulationRequest,
+  signal: AbortSignal,
+): Promise<Result<Simulation>> {
   const deadline = performance.now() + SIMULATION_LIMITS.wallMs;
   const run = createRun(document, { at, traces: false });
   while (!run.advance(SLICE)) {

@@ -29,6 +29,11 @@ export async function answerSimulation(db: RootDatabase, scope: Scope | null, re
 
 function refusal(result: Extract<Result<unknown>, { ok: false }>): Response {
   const { code, findings, detail } = result;
-  const waitS = typeof detail === "object" && detail !== null && "retryAfterS" in detail ? String(detail.retryAfterS) : undefined;
-  return problem(code, { findings, detail: typeof detail === "string" ? detail : undefined, headers: waitS === undefined ? undefined : { "retry-after": waitS } });
+  const waitS =
+    typeof detail === "object" && detail !== null && "retryAfterS" in detail ? String(detail.retryAfterS) : undefined;
+  return problem(code, {
+    findings,
+    detail: typeof detail === "string" ? detail : undefined,
+    headers: waitS === undefined ? undefined : { "retry-after": waitS },
+  });
 }

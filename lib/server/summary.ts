@@ -21,7 +21,10 @@ export async function summarise(document: ScenarioDocument): Promise<RunSummary 
   const current = trace.traces.motorCurrentA;
   if (!current) return null;
   // an envelope has the columns already; a short run comes as break points
-  const { minA, maxA } = trace.kind === "envelope" ? { minA: Array.from(current.min, round), maxA: Array.from(current.max, round) } : columnsOf(trace.timeS, current, durationS);
+  const { minA, maxA } =
+    trace.kind === "envelope"
+      ? { minA: Array.from(current.min, round), maxA: Array.from(current.max, round) }
+      : columnsOf(trace.timeS, current, durationS);
   return {
     motorRmsA: round(figures.motorRmsA),
     motorRippleA: round(figures.motorRippleA),
@@ -34,10 +37,15 @@ export async function summarise(document: ScenarioDocument): Promise<RunSummary 
 }
 
 /** Break points to COLUMN_COUNT columns, joined by straight lines where a column border falls between two. */
-function columnsOf(timeS: Float64Array, current: { min: Float64Array; max: Float64Array }, durationS: number): { minA: number[]; maxA: number[] } {
+function columnsOf(
+  timeS: Float64Array,
+  current: { min: Float64Array; max: Float64Array },
+  durationS: number,
+): { minA: number[]; maxA: number[] } {
   const minA = new Array<number>(COLUMN_COUNT).fill(Infinity);
   const maxA = new Array<number>(COLUMN_COUNT).fill(-Infinity);
-  const columnAt = (time: number) => Math.min(COLUMN_COUNT - 1, Math.max(0, Math.floor((time / durationS) * COLUMN_COUNT + 1e-9)));
+  const columnAt = (time: number) =>
+    Math.min(COLUMN_COUNT - 1, Math.max(0, Math.floor((time / durationS) * COLUMN_COUNT + 1e-9)));
   const put = (column: number, low: number, high: number) => {
     minA[column] = Math.min(minA[column]!, low);
     maxA[column] = Math.max(maxA[column]!, high);
@@ -55,6 +63,7 @@ function columnsOf(timeS: Float64Array, current: { min: Float64Array; max: Float
       put(border, low, high);
     }
   }
-  for (let column = 1; column < COLUMN_COUNT; column += 1) if (minA[column] === Infinity) put(column, minA[column - 1]!, maxA[column - 1]!);
+  for (let column = 1; column < COLUMN_COUNT; column += 1)
+    if (minA[column] === Infinity) put(column, minA[column - 1]!, maxA[column - 1]!);
   return { minA: minA.map(round), maxA: maxA.map(round) };
 }

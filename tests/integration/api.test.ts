@@ -20,15 +20,30 @@ beforeEach(async () => {
 });
 afterAll(() => database.drop());
 
-const send = (body: unknown, headers: Record<string, string> = { "content-type": "application/json" }, signal?: AbortSignal) =>
+const send = (
+  body: unknown,
+  headers: Record<string, string> = { "content-type": "application/json" },
+  signal?: AbortSignal,
+) =>
   answerSimulation(
     database.app.db,
     world.scopes.student,
-    new Request("http://localhost/api/v1/simulations", { method: "POST", headers, body: typeof body === "string" ? body : JSON.stringify(body), signal }),
+    new Request("http://localhost/api/v1/simulations", {
+      method: "POST",
+      headers,
+      body: typeof body === "string" ? body : JSON.stringify(body),
+      signal,
+    }),
   );
 const readProblem = async (response: Response) => {
   expect(response.headers.get("content-type")).toBe("application/problem+json");
-  const body = (await response.json()) as { type: string; title: string; status: number; code: string; errors?: { path: string }[] };
+  const body = (await response.json()) as {
+    type: string;
+    title: string;
+    status: number;
+    code: string;
+    errors?: { path: string }[];
+  };
   expect(body.status).toBe(response.status);
   expect(body.type).toBe(`urn:slackwater:problem:${body.code}`);
   expect(body.title.length).toBeGreaterThan(10);
@@ -53,7 +68,10 @@ describe("POST /api/v1/simulations", () => {
 
   it("asks who it is first", async () => {
     const request = new Request("http://localhost/", { method: "POST", body: "{" });
-    expect(await readProblem(await answerSimulation(database.app.db, null, request))).toMatchObject({ status: 401, code: "auth.required" });
+    expect(await readProblem(await answerSimulation(database.app.db, null, request))).toMatchObject({
+      status: 401,
+      code: "auth.required",
+    });
   });
 
   it("refuses a broken document with every path at once", async () => {
@@ -61,14 +79,20 @@ describe("POST /api/v1/simulations", () => {
     const broken = { ...document, supply: { voltageV: "24" }, pwm: { ...document.pwm, frequencyHz: 1e9 }, extra: 1 };
     const body = await readProblem(await send({ document: broken, at: [0], more: true }));
     expect(body).toMatchObject({ status: 422, code: "input.invalid" });
-    expect(body.errors?.map((one) => one.path)).toEqual(expect.arrayContaining(["more", "supply.voltageV", "pwm.frequencyHz", "extra"]));
+    expect(body.errors?.map((one) => one.path)).toEqual(
+      expect.arrayContaining(["more", "supply.voltageV", "pwm.frequencyHz", "extra"]),
+    );
   });
 
   it("refuses instants outside the run, each by its place", async () => {
     const body = await readProblem(await send({ document: shortDocument(), at: [0, -1e-9, 2e-3, "1", null] }));
     expect(body.errors?.map((one) => one.path)).toEqual(["at.1", "at.2", "at.3", "at.4"]);
-    expect(await readProblem(await send({ document: shortDocument(), at: 0 }))).toMatchObject({ errors: [{ path: "at" }] });
-    expect(await readProblem(await send({ document: shortDocument(), at: new Array(10_001).fill(0) }))).toMatchObject({ errors: [{ path: "at" }] });
+    expect(await readProblem(await send({ document: shortDocument(), at: 0 }))).toMatchObject({
+      errors: [{ path: "at" }],
+    });
+    expect(await readProblem(await send({ document: shortDocument(), at: new Array(10_001).fill(0) }))).toMatchObject({
+      errors: [{ path: "at" }],
+    });
   });
 
   it.each([
@@ -82,15 +106,26 @@ describe("POST /api/v1/simulations", () => {
   });
 
   it("refuses another media type", async () => {
-    expect(await readProblem(await send(shortDocument(), { "content-type": "text/plain" }))).toMatchObject({ status: 415, code: "input.media-type" });
+    expect(await readProblem(await send(shortDocument(), { "content-type": "text/plain" }))).toMatchObject({
+      status: 415,
+      code: "input.media-type",
+    });
   });
 
   it("refuses more than 200 000 periods or 2 000 000 conversions before starting, and says how many there are", async () => {
     const document = shortDocument();
     const long = { ...document, run: { durationS: 11 } };
     const body = await readProblem(await send(long));
-    expect(body).toMatchObject({ status: 422, code: "engine.too-long", errors: [{ path: "run.durationS", text: expect.stringContaining("220000 PWM periods") }] });
-    const dense = { ...document, run: { durationS: 2.5 }, sensing: { ...document.sensing, converter: { ...document.sensing.converter, perPeriod: 64 } } };
+    expect(body).toMatchObject({
+      status: 422,
+      code: "engine.too-long",
+      errors: [{ path: "run.durationS", text: expect.stringContaining("220000 PWM periods") }],
+    });
+    const dense = {
+      ...document,
+      run: { durationS: 2.5 },
+      sensing: { ...document.sensing, converter: { ...document.sensing.converter, perPeriod: 64 } },
+    };
     expect(await readProblem(await send(dense))).toMatchObject({ code: "engine.too-long" });
   });
 
@@ -122,13 +157,24 @@ describe("the descriptions", () => {
   });
 
   it("the OpenAPI document names what exists, and every reference in it leads somewhere", async () => {
-    const description = (await getDescription().json()) as { openapi: string; paths: Record<string, unknown>; components: { schemas: Record<string, unknown> } };
+    const description = (await getDescription().json()) as {
+      openapi: string;
+      paths: Record<string, unknown>;
+      components: { schemas: Record<string, unknown> };
+    };
     expect(description.openapi).toMatch(/^3\.1\./);
-    expect(Object.keys(description.paths).sort()).toEqual(["/api/v1/openapi.json", "/api/v1/schema/scenario", "/api/v1/simulations"]);
+    expect(Object.keys(description.paths).sort()).toEqual([
+      "/api/v1/openapi.json",
+      "/api/v1/schema/scenario",
+      "/api/v1/simulations",
+    ]);
     const references = [...JSON.stringify(description).matchAll(/"\$ref":"([^"]+)"/g)].map((match) => match[1]!);
     expect(references.length).toBeGreaterThan(3);
     for (const reference of references) {
-      const found = reference.replace(/^#\//, "").split("/").reduce<unknown>((value, name) => (value as Record<string, unknown> | undefined)?.[name], description);
+      const found = reference
+        .replace(/^#\//, "")
+        .split("/")
+        .reduce<unknown>((value, name) => (value as Record<string, unknown> | undefined)?.[name], description);
       expect(found, reference).toBeDefined();
     }
   });

@@ -14,7 +14,11 @@ afterAll(() => database.drop());
 describe("a limit", () => {
   it("lets exactly its number through, also when all come at once on several connections", async () => {
     const connections = [database.app, database.openApp(), database.openApp()];
-    const answers = await Promise.all(Array.from({ length: 40 }, (_, n) => countAttempt(connections[n % 3]!.db, { key: "at once", windowS, limit: 15 })));
+    const answers = await Promise.all(
+      Array.from({ length: 40 }, (_, n) =>
+        countAttempt(connections[n % 3]!.db, { key: "at once", windowS, limit: 15 }),
+      ),
+    );
     expect(answers.filter((answer) => answer.isAllowed)).toHaveLength(15);
   });
 
@@ -32,11 +36,17 @@ describe("a limit", () => {
     await database.owner.db.execute(sql`
       insert into rate_limits (key, window_start, attempt_count, stale_at)
       values ('before', to_timestamp(floor(extract(epoch from now()) / ${windowS}) * ${windowS} - ${windowS}), 100, now() + interval '1 day')`);
-    const [elapsed] = await database.owner.db.execute<{ share: number }>(sql`select (extract(epoch from now()) / ${windowS} - floor(extract(epoch from now()) / ${windowS}))::float8 as share`);
+    const [elapsed] = await database.owner.db.execute<{ share: number }>(
+      sql`select (extract(epoch from now()) / ${windowS} - floor(extract(epoch from now()) / ${windowS}))::float8 as share`,
+    );
     const carried = 100 * (1 - elapsed!.share);
     expect(carried).toBeGreaterThan(2);
-    expect((await countAttempt(database.app.db, { key: "before", windowS, limit: Math.ceil(carried) + 1 })).isAllowed).toBe(true);
-    expect((await countAttempt(database.app.db, { key: "before", windowS, limit: Math.floor(carried) })).isAllowed).toBe(false);
+    expect(
+      (await countAttempt(database.app.db, { key: "before", windowS, limit: Math.ceil(carried) + 1 })).isAllowed,
+    ).toBe(true);
+    expect(
+      (await countAttempt(database.app.db, { key: "before", windowS, limit: Math.floor(carried) })).isAllowed,
+    ).toBe(false);
   });
 
   it("gets back what was returned, never more than was taken", async () => {
@@ -50,7 +60,11 @@ describe("a limit", () => {
   });
 
   it("cannot be read or lifted by the application's role", async () => {
-    await expect(database.app.db.execute(sql`delete from rate_limits`)).rejects.toMatchObject({ cause: { code: "42501" } });
-    await expect(database.app.db.execute(sql`select key from rate_limits`)).rejects.toMatchObject({ cause: { code: "42501" } });
+    await expect(database.app.db.execute(sql`delete from rate_limits`)).rejects.toMatchObject({
+      cause: { code: "42501" },
+    });
+    await expect(database.app.db.execute(sql`select key from rate_limits`)).rejects.toMatchObject({
+      cause: { code: "42501" },
+    });
   });
 });

@@ -15,7 +15,8 @@ beforeAll(async () => {
 });
 afterAll(() => database.drop());
 
-const as = (scope: Scope, statement: ReturnType<typeof sql>) => withScope(database.app.db, scope, (tx) => tx.execute<Record<string, unknown>>(statement));
+const as = (scope: Scope, statement: ReturnType<typeof sql>) =>
+  withScope(database.app.db, scope, (tx) => tx.execute<Record<string, unknown>>(statement));
 const DENIED = { cause: { code: "42501" } };
 
 describe("the application's role", () => {
@@ -35,7 +36,10 @@ describe("the application's role", () => {
     ["read a session's hash", sql`select token_hash from sessions`],
     ["make a person", sql`insert into users (email, name) values ('x@example.org', 'x')`],
     ["change a role", sql`update memberships set role = 'admin'`],
-    ["join a workspace", sql`insert into memberships (workspace_id, user_id) select workspace_id, user_id from memberships`],
+    [
+      "join a workspace",
+      sql`insert into memberships (workspace_id, user_id) select workspace_id, user_id from memberships`,
+    ],
     ["approve by hand", sql`update scenarios set approved_number = 1`],
     ["set a link's count", sql`update share_links set opened_count = 0`],
     ["give a scenario away", sql`update scenarios set owner_id = gen_random_uuid()`],
@@ -49,25 +53,45 @@ describe("the application's role", () => {
   it("may not call a scenario approved, nor count two revisions at once, though it may write the column", async () => {
     const { admin } = world.scopes;
     const id = await world.addScenario(admin);
-    await expect(as(admin, sql`update scenarios set state = 'approved' where id = ${id}`)).rejects.toMatchObject(DENIED);
-    await expect(as(admin, sql`update scenarios set newest_number = 3 where id = ${id}`)).rejects.toMatchObject({ cause: { code: "23514" } });
+    await expect(as(admin, sql`update scenarios set state = 'approved' where id = ${id}`)).rejects.toMatchObject(
+      DENIED,
+    );
+    await expect(as(admin, sql`update scenarios set newest_number = 3 where id = ${id}`)).rejects.toMatchObject({
+      cause: { code: "23514" },
+    });
   });
 
   it("may not write a revision, audit row or link in another's name", async () => {
     const { admin, designer } = world.scopes;
     const id = await world.addScenario(admin);
     const { workspaceId } = admin;
-    await expect(as(designer, sql`insert into revisions (workspace_id, scenario_id, number, document, author_id, author_name) values (${workspaceId}, ${id}, 2, '{}', ${admin.userId}, 'x')`)).rejects.toMatchObject(DENIED);
-    await expect(as(designer, sql`insert into audit (workspace_id, actor_id, actor_name, deed, correlation_id) values (${workspaceId}, ${admin.userId}, 'x', 'x', 'x')`)).rejects.toMatchObject(DENIED);
     await expect(
-      as(designer, sql`insert into share_links (workspace_id, scenario_id, token_hash, label, maker_id) values (${workspaceId}, ${id}, ${"0".repeat(64)}, 'x', ${admin.userId})`),
+      as(
+        designer,
+        sql`insert into revisions (workspace_id, scenario_id, number, document, author_id, author_name) values (${workspaceId}, ${id}, 2, '{}', ${admin.userId}, 'x')`,
+      ),
+    ).rejects.toMatchObject(DENIED);
+    await expect(
+      as(
+        designer,
+        sql`insert into audit (workspace_id, actor_id, actor_name, deed, correlation_id) values (${workspaceId}, ${admin.userId}, 'x', 'x', 'x')`,
+      ),
+    ).rejects.toMatchObject(DENIED);
+    await expect(
+      as(
+        designer,
+        sql`insert into share_links (workspace_id, scenario_id, token_hash, label, maker_id) values (${workspaceId}, ${id}, ${"0".repeat(64)}, 'x', ${admin.userId})`,
+      ),
     ).rejects.toMatchObject(DENIED);
   });
 
   it("cannot put a revision of one workspace under a scenario of another", async () => {
     const { designer } = world.scopes;
     const foreign = await world.addScenario(world.foreigner);
-    const attempt = as(designer, sql`insert into revisions (workspace_id, scenario_id, number, document, author_id, author_name) values (${designer.workspaceId}, ${foreign}, 2, '{}', ${designer.userId}, 'x')`);
+    const attempt = as(
+      designer,
+      sql`insert into revisions (workspace_id, scenario_id, number, document, author_id, author_name) values (${designer.workspaceId}, ${foreign}, 2, '{}', ${designer.userId}, 'x')`,
+    );
     await expect(attempt).rejects.toMatchObject({ cause: { code: "23503" } });
   });
 });
@@ -75,7 +99,8 @@ describe("the application's role", () => {
 describe("people", () => {
   it("are visible to colleagues, not to other workspaces, and a student sees himself and owners of what he may read", async () => {
     const { designer, student, lead } = world.scopes;
-    const names = async (scope: Scope) => (await as(scope, sql`select name from users order by name`)).map((row) => row.name);
+    const names = async (scope: Scope) =>
+      (await as(scope, sql`select name from users order by name`)).map((row) => row.name);
     expect(await names(designer)).toHaveLength(7);
     expect(await names(world.foreigner)).toEqual(["The foreigner"]);
     expect(await names(student)).toEqual(["The student"]);
@@ -86,7 +111,9 @@ describe("people", () => {
 
   it("list their own workspaces with the role in each", async () => {
     const { designer } = world.scopes;
-    await database.owner.db.execute(sql`insert into memberships (workspace_id, user_id, role, created_at) values (${world.foreigner.workspaceId}, ${designer.userId}, 'trainer', now() + interval '1 hour')`);
+    await database.owner.db.execute(
+      sql`insert into memberships (workspace_id, user_id, role, created_at) values (${world.foreigner.workspaceId}, ${designer.userId}, 'trainer', now() + interval '1 hour')`,
+    );
     expect(await findWorkspaces(database.app.db, { userId: designer.userId })).toEqual([
       { id: designer.workspaceId, name: "Sluice drives", role: "designer" },
       { id: world.foreigner.workspaceId, name: "Harbour cranes", role: "trainer" },
@@ -98,10 +125,17 @@ describe("a scope", () => {
   it("ends with its transaction: the next one on the connection acts for nobody", async () => {
     const single = database.openApp();
     await withScope(single.db, world.scopes.admin, (tx) => tx.execute(sql`select 1`));
-    for (let n = 0; n < 8; n += 1) expect(await single.db.execute(sql`select app.user_id() as id, app.workspace_id() as workspace`)).toEqual([{ id: null, workspace: null }]);
+    for (let n = 0; n < 8; n += 1)
+      expect(await single.db.execute(sql`select app.user_id() as id, app.workspace_id() as workspace`)).toEqual([
+        { id: null, workspace: null },
+      ]);
   });
 
   it("cannot be exchanged inside a transaction", async () => {
-    await expect(withScope(database.app.db, world.scopes.student, (tx) => withScope(tx, world.scopes.admin, (inner) => inner.execute(sql`select 1`)))).rejects.toThrow(/another scope/);
+    await expect(
+      withScope(database.app.db, world.scopes.student, (tx) =>
+        withScope(tx, world.scopes.admin, (inner) => inner.execute(sql`select 1`)),
+      ),
+    ).rejects.toThrow(/another scope/);
   });
 });

@@ -18,25 +18,40 @@ afterAll(() => {
 });
 
 const ask = (path: string, init: { method?: string; headers?: Record<string, string> } = {}) =>
-  proxy(new NextRequest(`http://localhost:3000${path}`, { ...init, headers: { host: "localhost:3000", ...init.headers } }));
+  proxy(
+    new NextRequest(`http://localhost:3000${path}`, { ...init, headers: { host: "localhost:3000", ...init.headers } }),
+  );
 const isPassed = (response: Response) => response.headers.get("x-middleware-next") === "1";
-const cookie = async (secret: string) => `authjs.session-token=${await encode({ token: { sub: "x", sessionToken: "t" }, secret, salt: "authjs.session-token" })}`;
+const cookie = async (secret: string) =>
+  `authjs.session-token=${await encode({ token: { sub: "x", sessionToken: "t" }, secret, salt: "authjs.session-token" })}`;
 
 describe("before every page", () => {
-  it.each(["/", "/sign-in", "/s/abc", "/join/abc", "/reset", "/api/v1/simulations", "/icon.svg"])("%s opens without signing in", async (path) => {
-    expect(isPassed(await ask(path))).toBe(true);
-  });
+  it.each(["/", "/sign-in", "/s/abc", "/join/abc", "/reset", "/api/v1/simulations", "/icon.svg"])(
+    "%s opens without signing in",
+    async (path) => {
+      expect(isPassed(await ask(path))).toBe(true);
+    },
+  );
 
-  it.each(["/scenarios", "/scenarios/1?at=2", "/workspace", "/s", "/no-such-page", "/sign-in/more"])("%s asks for signing in and comes back", async (path) => {
-    const response = await ask(path);
-    expect(response.status).toBe(307);
-    const target = new URL(response.headers.get("location")!);
-    expect([target.origin, target.pathname, target.searchParams.get("from")]).toEqual(["http://localhost:3000", "/sign-in", path]);
-  });
+  it.each(["/scenarios", "/scenarios/1?at=2", "/workspace", "/s", "/no-such-page", "/sign-in/more"])(
+    "%s asks for signing in and comes back",
+    async (path) => {
+      const response = await ask(path);
+      expect(response.status).toBe(307);
+      const target = new URL(response.headers.get("location")!);
+      expect([target.origin, target.pathname, target.searchParams.get("from")]).toEqual([
+        "http://localhost:3000",
+        "/sign-in",
+        path,
+      ]);
+    },
+  );
 
   it("lets a sealed cookie through, and none that was sealed elsewhere", async () => {
     expect(isPassed(await ask("/scenarios", { headers: { cookie: await cookie(SECRET) } }))).toBe(true);
-    expect(isPassed(await ask("/scenarios", { headers: { cookie: await cookie("another-secret-0123456789abcdef01") } }))).toBe(false);
+    expect(
+      isPassed(await ask("/scenarios", { headers: { cookie: await cookie("another-secret-0123456789abcdef01") } })),
+    ).toBe(false);
     expect(isPassed(await ask("/scenarios", { headers: { cookie: "authjs.session-token=x" } }))).toBe(false);
   });
 
@@ -47,7 +62,14 @@ describe("before every page", () => {
     const policy = policies[0]!.get("content-security-policy")!;
     expect(policies[0]!.get("x-middleware-request-content-security-policy")).toBe(policy);
     expect(policies[0]!.get("x-middleware-request-x-nonce")).toBe(nonces[0]);
-    for (const rule of ["worker-src 'self'", "form-action 'self'", "object-src 'none'", "base-uri 'none'", "frame-ancestors 'none'"]) expect(policy).toContain(rule);
+    for (const rule of [
+      "worker-src 'self'",
+      "form-action 'self'",
+      "object-src 'none'",
+      "base-uri 'none'",
+      "frame-ancestors 'none'",
+    ])
+      expect(policy).toContain(rule);
     expect(policy).not.toContain("unsafe-eval");
     expect(policy).not.toMatch(/script-src[^;]*unsafe-inline/);
   });
@@ -60,19 +82,29 @@ describe("before every page", () => {
 
   it("sends a browser from 127.0.0.1 on to localhost without a redirect", async () => {
     const response = await ask("/scenarios?x=1", { headers: { host: "127.0.0.1:3000", accept: "text/html" } });
-    expect([response.status, response.headers.get("refresh")]).toEqual([200, "0; url=http://localhost:3000/scenarios?x=1"]);
+    expect([response.status, response.headers.get("refresh")]).toEqual([
+      200,
+      "0; url=http://localhost:3000/scenarios?x=1",
+    ]);
   });
 });
 
 describe("the address of a request", () => {
   it("is the connection's, whatever the header claims", async () => {
     pinClientAddress();
-    const server = createServer((request, response) => response.end(addressOf(new Headers({ "x-forwarded-for": String(request.headers["x-forwarded-for"]) }))));
+    const server = createServer((request, response) =>
+      response.end(addressOf(new Headers({ "x-forwarded-for": String(request.headers["x-forwarded-for"]) }))),
+    );
     await new Promise<void>((resume) => server.listen(0, "127.0.0.1", resume));
     const { port } = server.address() as AddressInfo;
     const answer = (headers: Record<string, string>) =>
       new Promise<string>((resume, fail) => {
-        sendRequest({ port, host: "127.0.0.1", headers }, (response) => void response.on("data", (data: Buffer) => resume(data.toString()))).on("error", fail).end();
+        sendRequest(
+          { port, host: "127.0.0.1", headers },
+          (response) => void response.on("data", (data: Buffer) => resume(data.toString())),
+        )
+          .on("error", fail)
+          .end();
       });
     expect(await answer({})).toBe("127.0.0.1");
     expect(await answer({ "x-forwarded-for": "203.0.113.9, 203.0.113.10" })).toBe("127.0.0.1");

@@ -22,7 +22,12 @@ describe("saving a revision", () => {
     const { designer } = world.scopes;
     const scenarioId = await newScenario();
     const document = shortDocument("Sluice gate drive", 26);
-    const saved = await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber: 1, document, message: "26 V battery" });
+    const saved = await saveRevision(database.app.db, designer, {
+      scenarioId,
+      baseRevisionNumber: 1,
+      document,
+      message: "26 V battery",
+    });
     expect(saved).toMatchObject({ ok: true, value: { number: 2 } });
     const view = await requireScenario(database.app.db, designer, scenarioId);
     expect(view.revision).toMatchObject({ number: 2, authorName: "The designer", message: "26 V battery", document });
@@ -33,8 +38,17 @@ describe("saving a revision", () => {
     const { designer } = world.scopes;
     const scenarioId = await newScenario();
     const document = shortDocument();
-    const broken = { ...document, supply: { ...document.supply, voltageV: -5 }, run: { durationS: 1e9 }, colour: "blue" };
-    const refused = await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber: 1, document: broken });
+    const broken = {
+      ...document,
+      supply: { ...document.supply, voltageV: -5 },
+      run: { durationS: 1e9 },
+      colour: "blue",
+    };
+    const refused = await saveRevision(database.app.db, designer, {
+      scenarioId,
+      baseRevisionNumber: 1,
+      document: broken,
+    });
     expect(refused).toMatchObject({ ok: false, code: "input.invalid" });
     const paths = refused.ok ? [] : refused.findings?.map((finding) => finding.path);
     expect(paths).toEqual(expect.arrayContaining(["supply.voltageV", "run.durationS", "colour"]));
@@ -46,16 +60,38 @@ describe("saving a revision", () => {
     const scenarioId = await newScenario();
     const [mine, theirs] = [shortDocument("Mine", 20), shortDocument("Theirs", 30)];
     await saveRevision(database.app.db, lead, { scenarioId, baseRevisionNumber: 1, document: theirs });
-    const conflict = await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber: 1, document: mine, message: "Lower" });
-    expect(conflict).toMatchObject({ ok: false, code: "edit.conflict", detail: { newest: { number: 2, authorName: "The lead", document: theirs }, kept: { document: mine } } });
+    const conflict = await saveRevision(database.app.db, designer, {
+      scenarioId,
+      baseRevisionNumber: 1,
+      document: mine,
+      message: "Lower",
+    });
+    expect(conflict).toMatchObject({
+      ok: false,
+      code: "edit.conflict",
+      detail: { newest: { number: 2, authorName: "The lead", document: theirs }, kept: { document: mine } },
+    });
     const { kept } = (conflict as { detail: ConflictDetail }).detail;
-    expect(await listKeptDrafts(database.app.db, designer, { scenarioId })).toMatchObject({ ok: true, value: [{ id: kept.draftId, baseNumber: 1, message: "Lower", document: mine }] });
+    expect(await listKeptDrafts(database.app.db, designer, { scenarioId })).toMatchObject({
+      ok: true,
+      value: [{ id: kept.draftId, baseNumber: 1, message: "Lower", document: mine }],
+    });
     expect(await listKeptDrafts(database.app.db, lead, { scenarioId })).toEqual({ ok: true, value: [] });
 
-    expect(await keepMineAsRevision(database.app.db, lead, { scenarioId, draftId: kept.draftId, baseRevisionNumber: 2 })).toMatchObject({ code: "thing.missing" });
-    expect(await keepMineAsRevision(database.app.db, designer, { scenarioId, draftId: kept.draftId, baseRevisionNumber: 1 })).toMatchObject({ code: "edit.conflict" });
-    expect(await keepMineAsRevision(database.app.db, designer, { scenarioId, draftId: kept.draftId, baseRevisionNumber: 2 })).toMatchObject({ ok: true, value: { number: 3 } });
-    expect((await requireScenario(database.app.db, designer, scenarioId)).revision).toMatchObject({ number: 3, document: mine, message: "Lower" });
+    expect(
+      await keepMineAsRevision(database.app.db, lead, { scenarioId, draftId: kept.draftId, baseRevisionNumber: 2 }),
+    ).toMatchObject({ code: "thing.missing" });
+    expect(
+      await keepMineAsRevision(database.app.db, designer, { scenarioId, draftId: kept.draftId, baseRevisionNumber: 1 }),
+    ).toMatchObject({ code: "edit.conflict" });
+    expect(
+      await keepMineAsRevision(database.app.db, designer, { scenarioId, draftId: kept.draftId, baseRevisionNumber: 2 }),
+    ).toMatchObject({ ok: true, value: { number: 3 } });
+    expect((await requireScenario(database.app.db, designer, scenarioId)).revision).toMatchObject({
+      number: 3,
+      document: mine,
+      message: "Lower",
+    });
     expect((await requireScenario(database.app.db, designer, scenarioId, 2)).revision.document).toEqual(theirs);
     expect(await listKeptDrafts(database.app.db, designer, { scenarioId })).toEqual({ ok: true, value: [] });
   });
@@ -66,7 +102,11 @@ describe("saving a revision", () => {
     const [one, two] = [database.openApp(), database.openApp()];
     const results = await Promise.all(
       Array.from({ length: 8 }, (_, n) =>
-        saveRevision(n % 2 ? one.db : two.db, n % 2 ? designer : lead, { scenarioId, baseRevisionNumber: 1, document: shortDocument(`Version ${n}`, 20 + n) }),
+        saveRevision(n % 2 ? one.db : two.db, n % 2 ? designer : lead, {
+          scenarioId,
+          baseRevisionNumber: 1,
+          document: shortDocument(`Version ${n}`, 20 + n),
+        }),
       ),
     );
     expect(results.filter((result) => result.ok)).toHaveLength(1);
@@ -84,27 +124,40 @@ describe("saving a revision", () => {
     // the owner holds the row as a saver would, until the second has begun to wait
     await database.owner.db.transaction(async (tx) => {
       await tx.execute(sql`update scenarios set newest_number = 2 where id = ${scenarioId}`);
-      second = saveRevision(database.openApp().db, designer, { scenarioId, baseRevisionNumber: 1, document: shortDocument("Second", 21) });
+      second = saveRevision(database.openApp().db, designer, {
+        scenarioId,
+        baseRevisionNumber: 1,
+        document: shortDocument("Second", 21),
+      });
       await waitForLock();
       await tx.execute(sql`
         insert into revisions (workspace_id, scenario_id, number, document, author_id, author_name)
         select workspace_id, scenario_id, 2, document, ${lead.userId}, 'The lead' from revisions where scenario_id = ${scenarioId} and number = 1`);
     });
-    expect(await second).toMatchObject({ ok: false, code: "edit.conflict", detail: { newest: { number: 2, authorName: "The lead" } } });
+    expect(await second).toMatchObject({
+      ok: false,
+      code: "edit.conflict",
+      detail: { newest: { number: 2, authorName: "The lead" } },
+    });
   });
 
   it("of an archived scenario is refused", async () => {
     const { designer } = world.scopes;
     const scenarioId = await newScenario();
     await archiveScenario(database.app.db, designer, { scenarioId });
-    expect(await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber: 1, document: shortDocument() })).toMatchObject({ code: "edit.archived" });
+    expect(
+      await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber: 1, document: shortDocument() }),
+    ).toMatchObject({ code: "edit.archived" });
   });
 
   it("writes one audit row in the same transaction, also for a conflict", async () => {
     const { designer } = world.scopes;
     const scenarioId = await newScenario();
-    for (const baseRevisionNumber of [1, 1]) await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber, document: shortDocument() });
-    const audited = await database.owner.db.execute(sql`select actor_name, deed, detail, correlation_id from audit where thing_id = ${scenarioId} order by id`);
+    for (const baseRevisionNumber of [1, 1])
+      await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber, document: shortDocument() });
+    const audited = await database.owner.db.execute(
+      sql`select actor_name, deed, detail, correlation_id from audit where thing_id = ${scenarioId} order by id`,
+    );
     expect(audited).toMatchObject([
       { actor_name: "The designer", deed: "revision.save", detail: { number: 2 }, correlation_id: "test-designer" },
       { actor_name: "The designer", deed: "revision.save", detail: { baseNumber: 1, refused: "edit.conflict" } },
@@ -113,7 +166,9 @@ describe("saving a revision", () => {
 
   async function waitForLock(): Promise<void> {
     for (let n = 0; n < 200; n += 1) {
-      const waiting = await database.owner.db.execute(sql`select from pg_stat_activity where datname = current_database() and wait_event_type = 'Lock'`);
+      const waiting = await database.owner.db.execute(
+        sql`select from pg_stat_activity where datname = current_database() and wait_event_type = 'Lock'`,
+      );
       if (waiting.length > 0) return;
       await new Promise((resume) => setTimeout(resume, 25));
     }
@@ -134,8 +189,15 @@ describe("revisions, once written,", () => {
   };
   it.each(Object.entries(statements))("stay when %s", async (_name, run) => {
     await newScenario();
-    await database.owner.db.execute(sql`insert into audit (actor_id, actor_name, deed, correlation_id) values (${world.scopes.admin.userId}, 'x', 'session.start', 'c')`);
-    const count = async () => (await database.owner.db.execute<{ n: string }>(sql`select (select count(*) from revisions) + (select count(*) from audit) as n`))[0]!.n;
+    await database.owner.db.execute(
+      sql`insert into audit (actor_id, actor_name, deed, correlation_id) values (${world.scopes.admin.userId}, 'x', 'session.start', 'c')`,
+    );
+    const count = async () =>
+      (
+        await database.owner.db.execute<{ n: string }>(
+          sql`select (select count(*) from revisions) + (select count(*) from audit) as n`,
+        )
+      )[0]!.n;
     const before = await count();
     await expect(run()).rejects.toMatchObject({ cause: { code: expect.stringMatching(/^(42501|23001|23503)$/) } });
     expect(await count()).toBe(before);
@@ -152,14 +214,28 @@ describe("copies and new scenarios", () => {
   it("copy what the person sees: a student the approved revision, everyone else the newest", async () => {
     const { designer, student } = world.scopes;
     const scenarioId = await world.addScenario(designer, { isApproved: true });
-    await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber: 1, document: shortDocument("Sluice gate drive", 29) });
+    await saveRevision(database.app.db, designer, {
+      scenarioId,
+      baseRevisionNumber: 1,
+      document: shortDocument("Sluice gate drive", 29),
+    });
     expect((await requireScenario(database.app.db, student, scenarioId)).revision.number).toBe(1);
-    await expect(requireScenario(database.app.db, student, scenarioId, 2)).rejects.toMatchObject({ code: "thing.missing" });
-    for (const [scope, voltageV] of [[student, 24], [designer, 29]] as const) {
+    await expect(requireScenario(database.app.db, student, scenarioId, 2)).rejects.toMatchObject({
+      code: "thing.missing",
+    });
+    for (const [scope, voltageV] of [
+      [student, 24],
+      [designer, 29],
+    ] as const) {
       const copied = await duplicateScenario(database.app.db, scope, { scenarioId });
       if (!copied.ok) throw new Error(copied.code);
       const copy = await requireScenario(database.app.db, scope, copied.value.id);
-      expect(copy).toMatchObject({ title: "Copy of Sluice gate drive", ownerId: scope.userId, mayEdit: true, revision: { number: 1, document: { title: "Copy of Sluice gate drive", supply: { voltageV } } } });
+      expect(copy).toMatchObject({
+        title: "Copy of Sluice gate drive",
+        ownerId: scope.userId,
+        mayEdit: true,
+        revision: { number: 1, document: { title: "Copy of Sluice gate drive", supply: { voltageV } } },
+      });
     }
   });
 
@@ -173,12 +249,16 @@ describe("copies and new scenarios", () => {
     expect(summary?.motorRmsA).toBeGreaterThan(0);
 
     const document = shortDocument();
-    const long = await createScenario(database.app.db, designer, { document: { ...document, run: { durationS: 40_001 / document.pwm.frequencyHz } } });
+    const long = await createScenario(database.app.db, designer, {
+      document: { ...document, run: { durationS: 40_001 / document.pwm.frequencyHz } },
+    });
     if (!long.ok) throw new Error(long.code);
     expect((await requireScenario(database.app.db, designer, long.value.id)).summary).toBeNull();
   });
 
   it("need a template that exists, or a document", async () => {
-    expect(await createScenario(database.app.db, world.scopes.designer, { templateId: "no-such-template" })).toMatchObject({ code: "input.invalid", findings: [{ path: "templateId" }] });
+    expect(
+      await createScenario(database.app.db, world.scopes.designer, { templateId: "no-such-template" }),
+    ).toMatchObject({ code: "input.invalid", findings: [{ path: "templateId" }] });
   });
 });

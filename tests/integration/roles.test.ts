@@ -2,7 +2,17 @@ import { randomUUID } from "node:crypto";
 import { sql } from "drizzle-orm";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import type { Scope, Transaction } from "@/db/client";
-import { ACCESS, can, DEEDS, MEMBER_ROLES, ROLES, type Deed, type MemberRole, type Role, type Thing } from "@/lib/access/table";
+import {
+  ACCESS,
+  can,
+  DEEDS,
+  MEMBER_ROLES,
+  ROLES,
+  type Deed,
+  type MemberRole,
+  type Role,
+  type Thing,
+} from "@/lib/access/table";
 import { createTestDatabase, type TestDatabase } from "./support/database";
 import { makeWorld, type World } from "./support/world";
 import { THROUGH_BARE_SQL, THROUGH_THE_SERVER, type Target } from "./support/attempts";
@@ -20,7 +30,9 @@ beforeAll(async () => {
   world = await makeWorld(database.owner.db);
   const { scopes, foreigner } = world;
   for (const { workspaceId, userId } of [scopes.admin, foreigner]) {
-    await database.owner.db.execute(sql`insert into audit (workspace_id, actor_id, actor_name, deed, correlation_id) values (${workspaceId}, ${userId}, 'x', 'scenario.create', 'c')`);
+    await database.owner.db.execute(
+      sql`insert into audit (workspace_id, actor_id, actor_name, deed, correlation_id) values (${workspaceId}, ${userId}, 'x', 'scenario.create', 'c')`,
+    );
   }
 });
 afterAll(() => database.drop());
@@ -50,20 +62,28 @@ function isExpected(role: Role, deed: Deed, kind: Kind): boolean {
 }
 
 describe("through the server's functions", () => {
-  const cells = ROLES.flatMap((role) => DEEDS.flatMap((deed) => KINDS.map((kind) => ({ role, deed, kind, isExpected: isExpected(role, deed, kind) }))));
+  const cells = ROLES.flatMap((role) =>
+    DEEDS.flatMap((deed) => KINDS.map((kind) => ({ role, deed, kind, isExpected: isExpected(role, deed, kind) }))),
+  );
 
   it.each(cells)("$role, $deed, $kind: $isExpected", async ({ role, deed, kind, isExpected: expected }) => {
     const target = await makeTarget(role, kind);
     const scope = role === "guest" ? null : world.scopes[role];
     const result = await THROUGH_THE_SERVER[deed](database.app.db, scope, target);
     if (expected) expect(result).toMatchObject({ ok: true });
-    else expect(result).toMatchObject({ ok: false, code: expect.stringMatching(/^(access\.denied|auth\.required|thing\.missing)$/) });
+    else
+      expect(result).toMatchObject({
+        ok: false,
+        code: expect.stringMatching(/^(access\.denied|auth\.required|thing\.missing)$/),
+      });
   });
 });
 
 describe("through bare SQL of the application's role", () => {
   const cells = MEMBER_ROLES.flatMap((role) =>
-    DEEDS.filter((deed) => THROUGH_BARE_SQL[deed]).flatMap((deed) => KINDS.map((kind) => ({ role, deed, kind, isExpected: isExpectedInSql(role, deed, kind) }))),
+    DEEDS.filter((deed) => THROUGH_BARE_SQL[deed]).flatMap((deed) =>
+      KINDS.map((kind) => ({ role, deed, kind, isExpected: isExpectedInSql(role, deed, kind) })),
+    ),
   );
 
   it.each(cells)("$role, $deed, $kind: $isExpected", async ({ role, deed, kind, isExpected: expected }) => {
@@ -103,9 +123,12 @@ function isExpectedInSql(role: MemberRole, deed: Deed, kind: Kind): boolean {
 async function tryBare(scope: Scope, deed: Deed, target: Target): Promise<boolean> {
   const attempt = THROUGH_BARE_SQL[deed];
   if (!attempt) throw new Error(`${deed} has no statement`);
-  if (deed === "scenario.restore") await database.owner.db.execute(sql`update scenarios set archived_at = now() where id = ${target.scenarioId}`);
+  if (deed === "scenario.restore")
+    await database.owner.db.execute(sql`update scenarios set archived_at = now() where id = ${target.scenarioId}`);
   return rolledBack(async (tx) => {
-    await tx.execute(sql`select set_config('app.user_id', ${scope.userId}, true), set_config('app.workspace_id', ${scope.workspaceId}, true)`);
+    await tx.execute(
+      sql`select set_config('app.user_id', ${scope.userId}, true), set_config('app.workspace_id', ${scope.workspaceId}, true)`,
+    );
     return attempt(tx, scope, target);
   });
 }

@@ -24,8 +24,11 @@ beforeEach(async () => {
 afterAll(() => database.drop());
 
 const visitFrom = (address: string) => ({ address, userAgent: "Test browser", correlationId: "test" });
-const attempt = (given: { email: string; password: string }, address = "192.0.2.10", verify: VerifyPassword = verifyPassword) =>
-  startSession(database.app.db, given, visitFrom(address), verify);
+const attempt = (
+  given: { email: string; password: string },
+  address = "192.0.2.10",
+  verify: VerifyPassword = verifyPassword,
+) => startSession(database.app.db, given, visitFrom(address), verify);
 
 describe("signing in", () => {
   it("answers the right password with a session that only its token opens", async () => {
@@ -47,7 +50,10 @@ describe("signing in", () => {
   it("gives an unknown e-mail and a wrong password the same answer for the same work", async () => {
     const counts: number[] = [];
     const answers: unknown[] = [];
-    for (const given of [{ email, password: "wrong" }, { email: "nobody@example.org", password: "wrong" }]) {
+    for (const given of [
+      { email, password: "wrong" },
+      { email: "nobody@example.org", password: "wrong" },
+    ]) {
       let count = 0;
       answers.push(
         await attempt(given, "192.0.2.11", (hash, password) => {
@@ -64,19 +70,29 @@ describe("signing in", () => {
   });
 
   it("names the field of an entry that is no e-mail", async () => {
-    expect(await attempt({ email: "nobody", password: "" })).toMatchObject({ ok: false, code: "input.invalid", findings: [{ path: "email" }, { path: "password" }] });
+    expect(await attempt({ email: "nobody", password: "" })).toMatchObject({
+      ok: false,
+      code: "input.invalid",
+      findings: [{ path: "email" }, { path: "password" }],
+    });
   });
 
   it("refuses the eleventh failure for one e-mail, from whichever address, known or not, even with the right password", async () => {
     for (const target of [email, "nobody@example.org"]) {
-      for (let n = 0; n < 10; n += 1) expect(await attempt({ email: target, password: "wrong" }, `192.0.2.${n}`)).toMatchObject({ code: "auth.refused" });
+      for (let n = 0; n < 10; n += 1)
+        expect(await attempt({ email: target, password: "wrong" }, `192.0.2.${n}`)).toMatchObject({
+          code: "auth.refused",
+        });
       const refused = await attempt({ email: target, password: PASSWORD }, "192.0.2.99");
       expect(refused).toMatchObject({ ok: false, code: "limit.reached", detail: { retryAfterS: expect.any(Number) } });
     }
   });
 
   it("refuses the thirty-first failure from one address, and lets others in", async () => {
-    for (let n = 0; n < 30; n += 1) expect(await attempt({ email: `nobody${n}@example.org`, password: "wrong" }, "192.0.2.50")).toMatchObject({ code: "auth.refused" });
+    for (let n = 0; n < 30; n += 1)
+      expect(await attempt({ email: `nobody${n}@example.org`, password: "wrong" }, "192.0.2.50")).toMatchObject({
+        code: "auth.refused",
+      });
     expect(await attempt({ email, password: PASSWORD }, "192.0.2.50")).toMatchObject({ code: "limit.reached" });
     expect(await attempt({ email, password: PASSWORD }, "192.0.2.51")).toMatchObject({ ok: true });
   });
@@ -86,7 +102,8 @@ describe("signing in", () => {
   });
 
   it("leaves an audit row per session, and none for a refusal", async () => {
-    const countRows = async () => (await database.owner.db.execute(sql`select id from audit where deed = 'session.start'`)).length;
+    const countRows = async () =>
+      (await database.owner.db.execute(sql`select id from audit where deed = 'session.start'`)).length;
     const before = await countRows();
     await attempt({ email, password: "wrong" });
     expect(await countRows()).toBe(before);
@@ -108,7 +125,9 @@ describe("sessions", () => {
     const { person } = await signIn();
     const listed = await listOwnSessions(database.app.db, person);
     if (!listed.ok) throw new Error(listed.code);
-    expect(listed.value.filter((session) => session.isCurrent)).toMatchObject([{ id: person.sessionId, address: "192.0.2.10", userAgent: "Test browser" }]);
+    expect(listed.value.filter((session) => session.isCurrent)).toMatchObject([
+      { id: person.sessionId, address: "192.0.2.10", userAgent: "Test browser" },
+    ]);
     expect(JSON.stringify(listed.value)).not.toMatch(/[0-9a-f]{64}/);
     const other = { ...person, userId: world.scopes.lead.userId };
     expect(await listOwnSessions(database.app.db, other)).toEqual({ ok: true, value: [] });
@@ -116,7 +135,10 @@ describe("sessions", () => {
 
   it("stop counting with the next request once revoked, and leave the others alone", async () => {
     const [first, second] = [await signIn(), await signIn()];
-    expect(await revokeOwnSession(database.app.db, second.person, { sessionId: first.person.sessionId })).toEqual({ ok: true, value: null });
+    expect(await revokeOwnSession(database.app.db, second.person, { sessionId: first.person.sessionId })).toEqual({
+      ok: true,
+      value: null,
+    });
     expect(await getSessionHolder(database.app.db, first.tokenHash)).toBeNull();
     expect(await getSessionHolder(database.app.db, second.tokenHash)).not.toBeNull();
   });
@@ -124,8 +146,14 @@ describe("sessions", () => {
   it("of someone else cannot be revoked", async () => {
     const { person, tokenHash } = await signIn();
     const stranger = { ...person, userId: world.scopes.admin.userId };
-    expect(await revokeOwnSession(database.app.db, stranger, { sessionId: person.sessionId })).toMatchObject({ ok: false, code: "thing.missing" });
-    expect(await revokeOwnSession(database.app.db, null, { sessionId: person.sessionId })).toMatchObject({ ok: false, code: "auth.required" });
+    expect(await revokeOwnSession(database.app.db, stranger, { sessionId: person.sessionId })).toMatchObject({
+      ok: false,
+      code: "thing.missing",
+    });
+    expect(await revokeOwnSession(database.app.db, null, { sessionId: person.sessionId })).toMatchObject({
+      ok: false,
+      code: "auth.required",
+    });
     expect(await getSessionHolder(database.app.db, tokenHash)).not.toBeNull();
   });
 

@@ -8,7 +8,11 @@ import { findingsOf } from "@/lib/server/findings";
 import { signInInput } from "@/lib/server/sign-in";
 
 /** Signs in with e-mail and password and sets the cookie; answers where to go next. `from` is the page that sent the person here. */
-export async function signIn(input: { email: string; password: string; from?: string }): Promise<Result<{ returnPath: string }>> {
+export async function signIn(input: {
+  email: string;
+  password: string;
+  from?: string;
+}): Promise<Result<{ returnPath: string }>> {
   const parsed = signInInput.safeParse(input);
   if (!parsed.success) return failure("input.invalid", { findings: findingsOf(parsed.error) });
   try {

@@ -7,11 +7,18 @@ import { getScope } from "@/lib/server/actor";
 import * as deeds from "@/lib/server/deeds/scenarios";
 
 /** Makes a scenario from a template, or from a document that was imported. */
-export async function createScenario(input: { templateId?: string; document?: unknown; title?: string }): Promise<Result<{ id: string }>> {
+export async function createScenario(input: {
+  templateId?: string;
+  document?: unknown;
+  title?: string;
+}): Promise<Result<{ id: string }>> {
   return refreshed(await deeds.createScenario(db, await getScope(), input));
 }
 
-export async function duplicateScenario(input: { scenarioId: string; title?: string }): Promise<Result<{ id: string }>> {
+export async function duplicateScenario(input: {
+  scenarioId: string;
+  title?: string;
+}): Promise<Result<{ id: string }>> {
   return refreshed(await deeds.duplicateScenario(db, await getScope(), input));
 }
 

@@ -1,6 +1,15 @@
 import { z } from "zod";
-import { requireScenarioThing } from "@/db/queries/scenarios";
-import { createKeptDraft, createRevision, findKeptDrafts, findRevisions, markDraftKept, requireKeptDraft, requireNewestRevision, type NewestRevision } from "@/db/queries/revisions";
+import { requireScenarioThing } from "@/db/queries/scenario-access";
+import {
+  createKeptDraft,
+  createRevision,
+  findKeptDrafts,
+  findRevisions,
+  markDraftKept,
+  requireKeptDraft,
+  requireNewestRevision,
+  type NewestRevision,
+} from "@/db/queries/revisions";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { failure, success, type Result } from "@/lib/result";
 import { defineDeed } from "../deed";
@@ -19,7 +28,12 @@ const numberField = z.int().min(1);
  */
 export const saveRevision = defineDeed({
   deed: "revision.save",
-  input: z.object({ scenarioId: keyField, baseRevisionNumber: numberField, document: scenarioField, message: messageField }),
+  input: z.object({
+    scenarioId: keyField,
+    baseRevisionNumber: numberField,
+    document: scenarioField,
+    message: messageField,
+  }),
   limit: "revision.save",
   thing: (tx, scope, input) => requireScenarioThing(tx, scope, input.scenarioId),
   prepare: ({ input }) => summarise(input.document),
@@ -33,7 +47,10 @@ export const saveRevision = defineDeed({
     const detail: ConflictDetail = { newest, kept: { draftId, document } };
     return failure("edit.conflict", { detail });
   },
-  audit: ({ input, result }) => ({ thingId: input.scenarioId, detail: result.ok ? { number: result.value.number } : { baseNumber: input.baseRevisionNumber } }),
+  audit: ({ input, result }) => ({
+    thingId: input.scenarioId,
+    detail: result.ok ? { number: result.value.number } : { baseNumber: input.baseRevisionNumber },
+  }),
 });
 
 /** Saves a kept draft on top of the newest revision its author has now seen; a still newer one is a conflict again (the draft stays). */
@@ -57,13 +74,19 @@ export const keepMineAsRevision = defineDeed({
       summary,
     });
     if (!saved) {
-      const detail: ConflictDetail = { newest: await requireNewestRevision(tx, scope, input.scenarioId), kept: { draftId: draft.id, document: draft.document } };
+      const detail: ConflictDetail = {
+        newest: await requireNewestRevision(tx, scope, input.scenarioId),
+        kept: { draftId: draft.id, document: draft.document },
+      };
       return failure("edit.conflict", { detail });
     }
     await markDraftKept(tx, scope, draft.id, saved.number);
     return success({ number: saved.number, revisionId: saved.id });
   },
-  audit: ({ input, result }) => ({ thingId: input.scenarioId, detail: { draftId: input.draftId, number: result.ok ? result.value.number : undefined } }),
+  audit: ({ input, result }) => ({
+    thingId: input.scenarioId,
+    detail: { draftId: input.draftId, number: result.ok ? result.value.number : undefined },
+  }),
 });
 
 /** The revisions that the person sees, newest first. */

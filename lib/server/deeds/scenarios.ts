@@ -1,6 +1,12 @@
 import { z } from "zod";
-import { requireScenario, requireScenarioThing } from "@/db/queries/scenarios";
-import { changeArchived, changeTags, changeTitle, createScenario as insertScenario } from "@/db/queries/scenario-changes";
+import { requireScenarioThing } from "@/db/queries/scenario-access";
+import { requireScenario } from "@/db/queries/scenarios";
+import {
+  changeArchived,
+  changeTags,
+  changeTitle,
+  createScenario as insertScenario,
+} from "@/db/queries/scenario-changes";
 import { failure, success } from "@/lib/result";
 import { templateById } from "@/lib/scenario/templates";
 import { defineDeed } from "../deed";
@@ -15,7 +21,11 @@ const tagsField = z
   .refine((tags) => tags.length <= 12, { error: TAG_RULE });
 
 const newScenarioInput = z
-  .object({ templateId: z.string().max(80).optional(), document: scenarioField.optional(), title: titleField.optional() })
+  .object({
+    templateId: z.string().max(80).optional(),
+    document: scenarioField.optional(),
+    title: titleField.optional(),
+  })
   .transform((input, context) => {
     const template = input.templateId === undefined ? undefined : templateById(input.templateId);
     const document = input.document ?? template?.document;
@@ -25,7 +35,12 @@ const newScenarioInput = z
     }
     const title = input.title ?? document.title;
     const isFromTemplate = template !== undefined && input.document === undefined;
-    return { title, document: { ...document, title }, tags: isFromTemplate ? [...template.tags] : [], message: isFromTemplate ? `From the template "${template.title}"` : "Imported" };
+    return {
+      title,
+      document: { ...document, title },
+      tags: isFromTemplate ? [...template.tags] : [],
+      message: isFromTemplate ? `From the template "${template.title}"` : "Imported",
+    };
   });
 
 /** A new scenario from a template or a document. */
@@ -57,7 +72,10 @@ export const duplicateScenario = defineDeed({
     });
     return success({ id });
   },
-  audit: ({ input, result }) => ({ thingId: result.ok ? result.value.id : undefined, detail: { from: input.scenarioId } }),
+  audit: ({ input, result }) => ({
+    thingId: result.ok ? result.value.id : undefined,
+    detail: { from: input.scenarioId },
+  }),
 });
 
 export const renameScenario = defineDeed({

@@ -1,6 +1,12 @@
 import { z } from "zod";
-import { requireScenarioThing } from "@/db/queries/scenarios";
-import { changeLinkExpiry, createShareLink as insertShareLink, findShareLinks, requireLinkThing, revokeLink } from "@/db/queries/shares";
+import { requireScenarioThing } from "@/db/queries/scenario-access";
+import {
+  changeLinkExpiry,
+  createShareLink as insertShareLink,
+  findShareLinks,
+  requireLinkThing,
+  revokeLink,
+} from "@/db/queries/shares";
 import { failure, success } from "@/lib/result";
 import { defineDeed } from "../deed";
 import { applicationUrl } from "../env";
@@ -11,7 +17,9 @@ const LABEL_RULE = "A label has 1 to 80 characters.";
 const labelField = z.string().trim().min(1, { error: LABEL_RULE }).max(80, { error: LABEL_RULE });
 // a Date from a server action, or ISO text from a form or a program
 const expiryField = z
-  .union([z.date(), z.iso.datetime({ offset: true }).transform((text) => new Date(text))], { error: "Give the expiry as a date and time." })
+  .union([z.date(), z.iso.datetime({ offset: true }).transform((text) => new Date(text))], {
+    error: "Give the expiry as a date and time.",
+  })
   .refine((date) => date.getTime() > Date.now(), { error: "The expiry must lie in the future." })
   .nullable();
 
@@ -19,21 +27,45 @@ const expiryField = z
 export const createShareLink = defineDeed({
   deed: "share.make",
   input: z
-    .object({ scenarioId: keyField, label: labelField, follows: z.enum(["pinned", "newest"]), revisionNumber: z.int().min(1).optional(), expiresAt: expiryField.optional() })
-    .refine((input) => input.follows === "newest" || input.revisionNumber !== undefined, { path: ["revisionNumber"], error: "Say which revision the link is pinned to." }),
+    .object({
+      scenarioId: keyField,
+      label: labelField,
+      follows: z.enum(["pinned", "newest"]),
+      revisionNumber: z.int().min(1).optional(),
+      expiresAt: expiryField.optional(),
+    })
+    .refine((input) => input.follows === "newest" || input.revisionNumber !== undefined, {
+      path: ["revisionNumber"],
+      error: "Say which revision the link is pinned to.",
+    }),
   thing: (tx, scope, input) => requireScenarioThing(tx, scope, input.scenarioId),
   run: async ({ tx, scope, input, thing }) => {
     const revisionNumber = input.follows === "pinned" ? (input.revisionNumber ?? null) : null;
     if (revisionNumber !== null && revisionNumber > thing.newestNumber) {
-      return failure("input.invalid", { findings: [{ path: "revisionNumber", code: "input.invalid", text: `There are revisions 1 to ${thing.newestNumber}.` }] });
+      return failure("input.invalid", {
+        findings: [
+          { path: "revisionNumber", code: "input.invalid", text: `There are revisions 1 to ${thing.newestNumber}.` },
+        ],
+      });
     }
     const token = createToken();
-    const id = await insertShareLink(tx, scope, { scenarioId: input.scenarioId, tokenHash: hashToken(token), label: input.label, revisionNumber, expiresAt: input.expiresAt ?? null });
+    const id = await insertShareLink(tx, scope, {
+      scenarioId: input.scenarioId,
+      tokenHash: hashToken(token),
+      label: input.label,
+      revisionNumber,
+      expiresAt: input.expiresAt ?? null,
+    });
     return success({ id, url: `${applicationUrl()}/s/${token}` });
   },
   audit: ({ input, result }) => ({
     thingId: result.ok ? result.value.id : undefined,
-    detail: { scenarioId: input.scenarioId, label: input.label, follows: input.follows, revisionNumber: input.revisionNumber },
+    detail: {
+      scenarioId: input.scenarioId,
+      label: input.label,
+      follows: input.follows,
+      revisionNumber: input.revisionNumber,
+    },
   }),
 });
 

@@ -3,7 +3,13 @@ import { sql } from "drizzle-orm";
 import { connect, type Connection } from "@/db/client";
 import { migrateDatabase } from "@/db/migrate";
 
-export type TestDatabase = { ownerUrl: string; owner: Connection; app: Connection; openApp: () => Connection; drop: () => Promise<void> };
+export type TestDatabase = {
+  ownerUrl: string;
+  owner: Connection;
+  app: Connection;
+  openApp: () => Connection;
+  drop: () => Promise<void>;
+};
 
 /**
  * A database of its own for one test file, on the server of DATABASE_OWNER_URL, migrated like the real one; `app` is

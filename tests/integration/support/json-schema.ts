@@ -32,20 +32,33 @@ const CHECKS: Record<string, Check> = {
   },
   const: (rule, value, path) => unless(value === rule, path, `is not ${String(rule)}`),
   enum: (rule, value, path) => unless((rule as unknown[]).includes(value), path, "is none of the allowed words"),
-  minimum: (rule, value, path) => unless(!isNumber(value) || value >= (rule as number), path, `is below ${String(rule)}`),
-  maximum: (rule, value, path) => unless(!isNumber(value) || value <= (rule as number), path, `is above ${String(rule)}`),
-  exclusiveMinimum: (rule, value, path) => unless(!isNumber(value) || value > (rule as number), path, `is not above ${String(rule)}`),
-  exclusiveMaximum: (rule, value, path) => unless(!isNumber(value) || value < (rule as number), path, `is not below ${String(rule)}`),
-  minLength: (rule, value, path) => unless(typeof value !== "string" || value.length >= (rule as number), path, "is too short"),
-  maxLength: (rule, value, path) => unless(typeof value !== "string" || value.length <= (rule as number), path, "is too long"),
-  minItems: (rule, value, path) => unless(!Array.isArray(value) || value.length >= (rule as number), path, "has too few"),
-  maxItems: (rule, value, path) => unless(!Array.isArray(value) || value.length <= (rule as number), path, "has too many"),
-  items: (rule, value, path) => (Array.isArray(value) ? value.flatMap((item, index) => findSchemaFaults(rule as Schema, item, `${path}.${index}`)) : []),
+  minimum: (rule, value, path) =>
+    unless(!isNumber(value) || value >= (rule as number), path, `is below ${String(rule)}`),
+  maximum: (rule, value, path) =>
+    unless(!isNumber(value) || value <= (rule as number), path, `is above ${String(rule)}`),
+  exclusiveMinimum: (rule, value, path) =>
+    unless(!isNumber(value) || value > (rule as number), path, `is not above ${String(rule)}`),
+  exclusiveMaximum: (rule, value, path) =>
+    unless(!isNumber(value) || value < (rule as number), path, `is not below ${String(rule)}`),
+  minLength: (rule, value, path) =>
+    unless(typeof value !== "string" || value.length >= (rule as number), path, "is too short"),
+  maxLength: (rule, value, path) =>
+    unless(typeof value !== "string" || value.length <= (rule as number), path, "is too long"),
+  minItems: (rule, value, path) =>
+    unless(!Array.isArray(value) || value.length >= (rule as number), path, "has too few"),
+  maxItems: (rule, value, path) =>
+    unless(!Array.isArray(value) || value.length <= (rule as number), path, "has too many"),
+  items: (rule, value, path) =>
+    Array.isArray(value)
+      ? value.flatMap((item, index) => findSchemaFaults(rule as Schema, item, `${path}.${index}`))
+      : [],
   properties: (rule, value, path, schema) => {
     if (!isObject(value)) return [];
     const rules = rule as Record<string, Schema>;
     const missing = ((schema.required as string[] | undefined) ?? []).filter((name) => !(name in value));
-    const known = Object.entries(rules).flatMap(([name, one]) => (name in value ? findSchemaFaults(one, value[name], `${path}.${name}`) : []));
+    const known = Object.entries(rules).flatMap(([name, one]) =>
+      name in value ? findSchemaFaults(one, value[name], `${path}.${name}`) : [],
+    );
     return [...missing.map((name) => ({ path: `${path}.${name}`, why: "is missing" })), ...known];
   },
   additionalProperties: (rule, value, path, schema) => {
@@ -54,7 +67,17 @@ const CHECKS: Record<string, Check> = {
     if (rule === false) return extra.map((name) => ({ path: `${path}.${name}`, why: "is not known" }));
     return extra.flatMap((name) => findSchemaFaults(rule as Schema, value[name], `${path}.${name}`));
   },
-  anyOf: (rule, value, path) => unless((rule as Schema[]).some((one) => findSchemaFaults(one, value).length === 0), path, "fits no alternative"),
-  oneOf: (rule, value, path) => unless((rule as Schema[]).filter((one) => findSchemaFaults(one, value).length === 0).length === 1, path, "fits not exactly one alternative"),
+  anyOf: (rule, value, path) =>
+    unless(
+      (rule as Schema[]).some((one) => findSchemaFaults(one, value).length === 0),
+      path,
+      "fits no alternative",
+    ),
+  oneOf: (rule, value, path) =>
+    unless(
+      (rule as Schema[]).filter((one) => findSchemaFaults(one, value).length === 0).length === 1,
+      path,
+      "fits not exactly one alternative",
+    ),
   allOf: (rule, value, path) => (rule as Schema[]).flatMap((one) => findSchemaFaults(one, value, path)),
 };

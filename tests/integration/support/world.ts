@@ -14,8 +14,15 @@ export type World = {
   otherStudent: Scope;
   /** The admin of another workspace. */
   foreigner: Scope;
-  addScenario: (owner: Scope, options?: { isApproved?: boolean; isArchived?: boolean; title?: string; tags?: string[] }) => Promise<string>;
-  addLink: (maker: Scope, scenarioId: string, options?: { revisionNumber?: number | null; expiresInS?: number; isRevoked?: boolean }) => Promise<{ id: string; token: string }>;
+  addScenario: (
+    owner: Scope,
+    options?: { isApproved?: boolean; isArchived?: boolean; title?: string; tags?: string[] },
+  ) => Promise<string>;
+  addLink: (
+    maker: Scope,
+    scenarioId: string,
+    options?: { revisionNumber?: number | null; expiresInS?: number; isRevoked?: boolean },
+  ) => Promise<{ id: string; token: string }>;
 };
 
 /** A checked document with a run of one millisecond: quick to summarise. Title and voltage make documents differ. */
@@ -26,7 +33,9 @@ export function shortDocument(title = "Sluice gate drive", voltageV = 24): Scena
 export async function makeWorld(owner: RootDatabase): Promise<World> {
   const home = await addWorkspace(owner, "Sluice drives");
   const away = await addWorkspace(owner, "Harbour cranes");
-  const people = await Promise.all(MEMBER_ROLES.map(async (role) => [role, await addMember(owner, home, role, `The ${role}`)] as const));
+  const people = await Promise.all(
+    MEMBER_ROLES.map(async (role) => [role, await addMember(owner, home, role, `The ${role}`)] as const),
+  );
   return {
     scopes: Object.fromEntries(people) as Record<MemberRole, Scope>,
     colleague: await addMember(owner, home, "designer", "The colleague"),
@@ -47,14 +56,32 @@ async function addWorkspace(owner: RootDatabase, name: string): Promise<{ id: st
   return { id: await insertOne(owner, sql`insert into workspaces (name) values (${name}) returning id`), name };
 }
 
-async function addMember(owner: RootDatabase, workspace: { id: string; name: string }, role: MemberRole, name: string): Promise<Scope> {
+async function addMember(
+  owner: RootDatabase,
+  workspace: { id: string; name: string },
+  role: MemberRole,
+  name: string,
+): Promise<Scope> {
   const email = `${randomBytes(5).toString("hex")}@example.org`;
   const userId = await insertOne(owner, sql`insert into users (email, name) values (${email}, ${name}) returning id`);
-  await owner.execute(sql`insert into memberships (workspace_id, user_id, role) values (${workspace.id}, ${userId}, ${role})`);
-  return { userId, userName: name, workspaceId: workspace.id, workspaceName: workspace.name, role, correlationId: `test-${role}` };
+  await owner.execute(
+    sql`insert into memberships (workspace_id, user_id, role) values (${workspace.id}, ${userId}, ${role})`,
+  );
+  return {
+    userId,
+    userName: name,
+    workspaceId: workspace.id,
+    workspaceName: workspace.name,
+    role,
+    correlationId: `test-${role}`,
+  };
 }
 
-async function addScenario(owner: RootDatabase, scope: Scope, options: Parameters<World["addScenario"]>[1] = {}): Promise<string> {
+async function addScenario(
+  owner: RootDatabase,
+  scope: Scope,
+  options: Parameters<World["addScenario"]>[1] = {},
+): Promise<string> {
   const title = options.title ?? "Sluice gate drive";
   return owner.transaction(async (tx) => {
     const [row] = await tx.execute<{ id: string }>(sql`
@@ -69,12 +96,20 @@ async function addScenario(owner: RootDatabase, scope: Scope, options: Parameter
   });
 }
 
-async function addLink(owner: RootDatabase, scope: Scope, scenarioId: string, options: Parameters<World["addLink"]>[2] = {}): Promise<{ id: string; token: string }> {
+async function addLink(
+  owner: RootDatabase,
+  scope: Scope,
+  scenarioId: string,
+  options: Parameters<World["addLink"]>[2] = {},
+): Promise<{ id: string; token: string }> {
   const token = randomBytes(32).toString("base64url");
-  const id = await insertOne(owner, sql`
+  const id = await insertOne(
+    owner,
+    sql`
     insert into share_links (workspace_id, scenario_id, token_hash, label, revision_number, maker_id, expires_at, revoked_at)
     values (${scope.workspaceId}, ${scenarioId}, ${hashToken(token)}, 'For the works', ${options.revisionNumber ?? null}, ${scope.userId},
       now() + make_interval(secs => ${options.expiresInS ?? null}::float8), ${options.isRevoked ? new Date().toISOString() : null}::timestamptz)
-    returning id`);
+    returning id`,
+  );
   return { id, token };
 }

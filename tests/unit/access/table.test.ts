@@ -37,7 +37,9 @@ describe("the permission table", () => {
   });
 
   it("counts a thing as not the actor's own unless it is said to be", () => {
-    const ownOnly: [Role, Deed][] = ROLES.flatMap((role) => DEEDS.filter((deed) => ACCESS[deed][role] === "own").map((deed): [Role, Deed] => [role, deed]));
+    const ownOnly: [Role, Deed][] = ROLES.flatMap((role) =>
+      DEEDS.filter((deed) => ACCESS[deed][role] === "own").map((deed): [Role, Deed] => [role, deed]),
+    );
     expect(ownOnly.length).toBeGreaterThan(0);
     for (const [role, deed] of ownOnly) expect(can(role, deed), `${role} ${deed}`).toBe(false);
   });

@@ -12,14 +12,24 @@ import { renameScenario as rename, setTags as tag } from "@/lib/server/deeds/sce
 import * as shareDeeds from "@/lib/server/deeds/shares";
 
 /** Saves on top of revision `baseRevisionNumber`; `edit.conflict` carries a ConflictDetail: the newest revision and the kept draft. */
-export async function saveRevision(input: { scenarioId: string; baseRevisionNumber: number; document: unknown; message?: string }): Promise<Result<SavedRevision>> {
+export async function saveRevision(input: {
+  scenarioId: string;
+  baseRevisionNumber: number;
+  document: unknown;
+  message?: string;
+}): Promise<Result<SavedRevision>> {
   const result = await revisionDeeds.saveRevision(db, await getScope(), input);
   if (result.ok) revalidatePath("/scenarios");
   return result;
 }
 
 /** Saves a kept draft on top of the newest revision that was shown. */
-export async function keepMineAsRevision(input: { scenarioId: string; draftId: string; baseRevisionNumber: number; message?: string }): Promise<Result<SavedRevision>> {
+export async function keepMineAsRevision(input: {
+  scenarioId: string;
+  draftId: string;
+  baseRevisionNumber: number;
+  message?: string;
+}): Promise<Result<SavedRevision>> {
   const result = await revisionDeeds.keepMineAsRevision(db, await getScope(), input);
   if (result.ok) revalidatePath("/scenarios");
   return result;
@@ -64,6 +74,9 @@ export async function revokeShareLink(input: { linkId: string }): Promise<Result
   return shareDeeds.revokeShareLink(db, await getScope(), input);
 }
 
-export async function changeExpiry(input: { linkId: string; expiresAt: Date | string | null }): Promise<Result<{ expiresAt: Date | null }>> {
+export async function changeExpiry(input: {
+  linkId: string;
+  expiresAt: Date | string | null;
+}): Promise<Result<{ expiresAt: Date | null }>> {
   return shareDeeds.changeExpiry(db, await getScope(), input);
 }
