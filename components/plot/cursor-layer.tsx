@@ -88,7 +88,7 @@ function Cursor({ layout, cursorS, format, band, scale, valueOf, x }: Props & { 
           return <circle key={`${lane.id}-${trace.name}`} cx={x} cy={y} r={trace.isDashed ? 2.9 : 3.4} fill={trace.isDashed ? "var(--sheet)" : "var(--ink)"} stroke={trace.isDashed ? "var(--ink)" : "var(--sheet)"} strokeWidth="1.2" />;
         }),
       )}
-      <rect x={tagX} y={layout.axisY + 5} width={tagPx} height="18" rx="2" fill="var(--ink)" />
+      <rect x={tagX} y={layout.axisY + 5} width={tagPx} height="18" rx="2" fill="var(--ink)" stroke="var(--paper)" strokeWidth="4" paintOrder="stroke" />
       <text x={tagX + tagPx / 2} y={layout.axisY + 18} textAnchor="middle" className={styles.tagText}>
         {text}
       </text>

@@ -35,11 +35,12 @@ export function drawBorder(painter: Painter, scene: Scene): void {
   const { layout, scale } = scene;
   const y = layout.borderY;
   const height = layout.axisY - y;
-  for (const segment of borderSegments(scene)) {
+  const segments = borderSegments(scene);
+  const room = Math.max(0, ...segments.map((segment) => segment.label.length)) * 6.5 + 8;
+  for (const segment of segments) {
     const x = xOf(scale, segment.fromS);
     const width = xOf(scale, segment.toS) - x;
     painter.rect(x, y + 2, width, height - 4, { color: segment.isInked ? "ink" : "sheet" });
-    const room = segment.label.length * 6.5 + 8;
     if (!layout.isCompact && width >= room) {
       painter.text(x + width / 2, y + height - 4.2, segment.label, { size: 10.5, weight: 600, color: segment.isInked ? "onInk" : "ink", anchor: "middle" });
     }

@@ -109,10 +109,12 @@ export function drawTicks(painter: Painter, scene: Scene, lane: PlacedLane): voi
   const { layout } = scene;
   const { min, max } = lane.scale;
   const { factor, unit } = unitScale(Math.max(Math.abs(min), Math.abs(max)), lane.unit);
-  const ticks = laneTicks(min, max, lane.height).filter((tick) => lane.id !== "combined" || lane.base === null || Math.abs(yOf(lane.scale, tick) - yOf(lane.scale, lane.base)) > 11);
-  const texts = tickTexts(ticks, factor, lane.kind === "signed" && lane.base === 0);
-  const top = texts.length - 1;
-  ticks.forEach((tick, index) => {
+  const all = laneTicks(min, max, lane.height);
+  const texts = tickTexts(all, factor, lane.kind === "signed" && lane.base === 0);
+  const top = all.length - 1;
+  const isFree = (tick: number) => lane.id !== "combined" || lane.base === null || Math.abs(yOf(lane.scale, tick) - yOf(lane.scale, lane.base)) > 11;
+  all.forEach((tick, index) => {
+    if (!isFree(tick)) return;
     const y = yOf(lane.scale, tick);
     painter.text(layout.x0 - 7, y + 3.7, texts[index]! + (index === top ? ` ${unit}` : ""), { size: 10.5, color: "ink3", anchor: "end" });
     painter.polyline([layout.x0 - 4, crisp(y), layout.x0, crisp(y)], { color: "edge", width: 1 });

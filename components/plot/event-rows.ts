@@ -1,17 +1,16 @@
 import type { Band, Conduction, Conversion, SimulationEvent } from "@/lib/engine/results";
 import { bandAt } from "./bands";
 import { isMiss } from "./draw-reading";
+import { sampleNumberAt } from "./sample-schedule";
+import type { SensingFacts } from "./sensing-facts";
 
 /** One line of the events table: everything that happens at one instant. */
 export type EventRow = {
   timeS: number;
   label: string;
-  /** Number from 1 and verdict of the conversion at this instant. */
-  sample: { number: number; isMiss: boolean } | null;
+  /** Number from 1 and verdict (null: not known) of the conversion at this instant. */
+  sample: { number: number; isMiss: boolean | null } | null;
 };
-
-/** Two events closer than this share of a PWM period are one instant: it is far below the dead time and above rounding. */
-export const SAME_INSTANT_SHARE = 1e-9;
 
 const switchName = (leg: string | undefined, detail: string): string => `${leg ?? ""}${detail.startsWith("high") ? "H" : "L"}`;
 
@@ -89,26 +88,26 @@ function labelOf(events: readonly SimulationEvent[], band: Band | null, sampleNu
 }
 
 /**
- * Events of a run as table rows in time order. `samples` number the conversions of the whole run from 1; `bands` (of the visible window)
- * add what the bridge does after a switch has turned on.
+ * Events of a run as table rows in time order. `samples` are the conversions whose verdict is known; their numbers follow from the
+ * schedule. `bands` (of the visible window) add what the bridge does after a switch has turned on.
  */
-export function eventRows(events: readonly SimulationEvent[], samples: readonly Conversion[], bands: readonly Band[], periodS: number, limitA: number): EventRow[] {
-  const sameS = periodS * SAME_INSTANT_SHARE;
-  const sorted = [...events].sort((a, b) => a.timeS - b.timeS);
+export function eventRows(events: readonly SimulationEvent[], samples: readonly Conversion[], bands: readonly Band[], facts: SensingFacts): EventRow[] {
+  const sameS = facts.instantS;
   const rows: EventRow[] = [];
   let sampleIndex = 0;
-  for (let index = 0; index < sorted.length; ) {
-    const timeS = sorted[index]!.timeS;
+  for (let index = 0; index < events.length; ) {
+    const timeS = events[index]!.timeS;
     let end = index + 1;
-    while (end < sorted.length && sorted[end]!.timeS - timeS <= sameS) end += 1;
-    const group = sorted.slice(index, end);
+    while (end < events.length && events[end]!.timeS - timeS <= sameS) end += 1;
+    const group = events.slice(index, end);
     while (sampleIndex < samples.length && samples[sampleIndex]!.timeS < timeS - sameS) sampleIndex += 1;
-    const sample = samples[sampleIndex];
-    const isSample = sample !== undefined && Math.abs(sample.timeS - timeS) <= sameS;
+    const known = samples[sampleIndex];
+    const isKnown = known !== undefined && Math.abs(known.timeS - timeS) <= sameS;
+    const number = group.some((event) => event.kind === "sample") ? sampleNumberAt(facts.samples, timeS, sameS) : null;
     rows.push({
       timeS,
-      label: labelOf(group, bandAt(bands, timeS + 2 * sameS), isSample ? sampleIndex + 1 : null),
-      sample: isSample ? { number: sampleIndex + 1, isMiss: isMiss(sample, limitA) } : null,
+      label: labelOf(group, bandAt(bands, timeS + 2 * sameS), number),
+      sample: number === null ? null : { number, isMiss: isKnown ? isMiss(known, facts.sampleLimitA) : null },
     });
     index = end;
   }
@@ -129,8 +128,7 @@ export function mergeEvents(ofRun: readonly SimulationEvent[], ofView: readonly 
 }
 
 /** Index of the row in force at `timeS` (the last one not after it), or -1 before the first. */
-export function rowAt(rows: readonly { timeS: number }[], timeS: number, periodS: number): number {
-  const slackS = periodS * SAME_INSTANT_SHARE;
+export function rowAt(rows: readonly { timeS: number }[], timeS: number, slackS: number): number {
   let low = 0;
   let high = rows.length;
   while (low < high) {

@@ -1,11 +1,12 @@
 "use client";
 
-import { useEffect, useId, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { useEffect, useId, useMemo, useRef, useState, type CSSProperties, type KeyboardEvent } from "react";
 import type { Simulation, View } from "@/lib/engine/results";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { eventRows, mergeEvents, rowAt, type EventRow } from "./event-rows";
+import { knownSamples } from "./sample-schedule";
 import { readSensing } from "./sensing-facts";
-import { fixed, timeFormat } from "./ticks";
+import { fixed, cursorFormat } from "./ticks";
 import { useSize } from "./use-size";
 import { valueAt } from "./values";
 import styles from "./steps.module.css";
@@ -30,14 +31,15 @@ const OUTPUT_HEADS: Record<string, string> = { combinedV: "Comb.", differenceV: 
 export function EventsTable({ view, overview, simulation, document, cursorS, onCursor }: EventsTableProps) {
   const sensing = useMemo(() => readSensing(document), [document]);
   const rows = useMemo(
-    () => eventRows(mergeEvents(simulation.events, view.events), simulation.samples, view.bands, sensing.periodS, sensing.sampleLimitA),
+    () => eventRows(mergeEvents(simulation.events, view.events), knownSamples(simulation.samples, view.samples, sensing.instantS), view.bands, sensing),
     [simulation, view, sensing],
   );
   const scrollerRef = useRef<HTMLDivElement>(null);
   const [scrollPx, setScrollPx] = useState(0);
-  const current = rowAt(rows, cursorS, sensing.periodS);
+  const current = rowAt(rows, cursorS, sensing.instantS);
   const id = useId();
-  const format = timeFormat({ fromS: 0, toS: simulation.durationS }, 800);
+  const format = cursorFormat({ fromS: 0, toS: simulation.durationS }, sensing.periodS);
+  const timeColumnPx = fixed(simulation.durationS / format.factor, format.decimals).length * 7.2 + 8;
   const { height: heightPx } = useSize(scrollerRef, { width: 300, height: 8 * ROW_PX });
 
   useEffect(() => {
@@ -67,7 +69,7 @@ export function EventsTable({ view, overview, simulation, document, cursorS, onC
           {current + 1} of {rows.length}
         </span>
       </div>
-      <div className={styles.grid} role="table" aria-label="Events of the run" aria-rowcount={rows.length + 1}>
+      <div className={styles.grid} style={{ "--time-col": `${timeColumnPx}px` } as CSSProperties} role="table" aria-label="Events of the run" aria-rowcount={rows.length + 1}>
         <div role="rowgroup" className={styles.titles}>
           <Titles unit={format.unit} output={OUTPUT_HEADS[sensing.readingTrace] ?? "Output"} />
         </div>
@@ -144,7 +146,7 @@ function Value({ value, decimals, isSigned = false }: { value: number | null; de
 }
 
 function SampleMark({ sample }: { sample: EventRow["sample"] }) {
-  if (sample === null) return null;
+  if (sample === null || sample.isMiss === null) return null;
   return (
     <svg width="10" height="10" viewBox="0 0 10 10" role="img" aria-label={sample.isMiss ? "misses the current" : "within its limit"}>
       {sample.isMiss ? <path d="M1.5 1.5l7 7m0 -7l-7 7" stroke="currentColor" strokeWidth="2" /> : <path d="M5 1l4 4-4 4-4-4z" fill="none" stroke="currentColor" strokeWidth="1.3" />}

@@ -98,7 +98,7 @@ function LaneName({ lane, layout }: { lane: PlacedLane; layout: PlotLayout }) {
 const ROW_PX = 16;
 
 function Readout({ lane, layout, facts, sensing }: { lane: PlacedLane; layout: PlotLayout; facts: CursorFacts; sensing: SensingFacts }) {
-  const room = Math.max(1, Math.floor((lane.height + 12) / ROW_PX));
+  const room = Math.max(1, Math.floor((lane.height + 5) / ROW_PX));
   const rows = readoutRows(lane, facts, sensing).slice(0, room);
   return (
     <dl className={styles.readout} style={{ left: layout.x1 + 32 }} aria-hidden="true">

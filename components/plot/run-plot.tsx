@@ -16,11 +16,12 @@ import { PlotControls } from "./plot-controls";
 import { PlotTable } from "./plot-table";
 import { applyCommand, commandOfKey, type RunCommand } from "./run-commands";
 import { runStops } from "./run-stops";
+import { knownSamples } from "./sample-schedule";
 import type { PlotWindow } from "./scale";
 import { SpanBar } from "./span-bar";
 import { StaticLayer } from "./static-layer";
 import type { ThemeName } from "./theme";
-import { timeFormat } from "./ticks";
+import { cursorFormat } from "./ticks";
 import { usePlotPointer } from "./use-plot-pointer";
 import { useScene } from "./use-scene";
 import { useSize } from "./use-size";
@@ -86,16 +87,14 @@ export function RunPlot(props: RunPlotProps) {
     isHeld: props.isHeld ?? false,
   });
   const { layout, scale, facts: sensing } = scene;
-  const stops = useMemo(() => runStops(simulation, view, sensing.periodS), [simulation, view, sensing.periodS]);
-  const rows = useMemo(
-    () => eventRows(mergeEvents(simulation.events, view.events), simulation.samples, view.bands, sensing.periodS, sensing.sampleLimitA),
-    [simulation, view, sensing],
-  );
+  const stops = useMemo(() => runStops(simulation, view, sensing), [simulation, view, sensing]);
+  const samples = useMemo(() => knownSamples(simulation.samples, view.samples, sensing.instantS), [simulation, view, sensing]);
+  const rows = useMemo(() => eventRows(mergeEvents(simulation.events, view.events), samples, view.bands, sensing), [simulation, view, samples, sensing]);
   const facts = useMemo(
-    () => cursorFacts({ view, overview, reading, samples: simulation.samples, cursorS, pinS, periodS: sensing.periodS }),
-    [view, overview, reading, simulation, cursorS, pinS, sensing.periodS],
+    () => cursorFacts({ view, overview, reading, samples, cursorS, pinS, sensing }),
+    [view, overview, reading, samples, cursorS, pinS, sensing],
   );
-  const format = timeFormat(viewWindow, layout.x1 - layout.x0);
+  const format = cursorFormat(viewWindow, sensing.periodS);
   const draw = useCallback((painter: Painter) => drawScene(painter, scene), [scene]);
 
   const command = (next: RunCommand) => {

@@ -1,5 +1,7 @@
 import type { TraceName } from "@/lib/engine/results";
+import { sampleLimitA } from "@/lib/engine/sensing/notices";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
+import { sampleSchedule, type SampleSchedule } from "./sample-schedule";
 
 /** What the drawings need to know of a document's drive and sensing, worked out once. */
 export type SensingFacts = {
@@ -15,17 +17,19 @@ export type SensingFacts = {
   outputMaxV: number;
   /** Motor current at which the reading leaves its span, in the direction with less room. */
   fullScaleA: number;
-  /** A sample farther than this from the true current counts as one that misses. */
+  /** A sample farther than this from the true current counts as one that misses; the engine's notices use the same limit. */
   sampleLimitA: number;
   /** Trace that the converter reads, and the lane that shows it. */
   readingTrace: TraceName;
+  samples: SampleSchedule;
+  /** Two instants closer than this are one. */
+  instantS: number;
   periodS: number;
   durationS: number;
 };
 
-/** Two per cent of full scale, at least three steps of the converter: less than that is quantisation, not a miss. */
-const MISS_SHARE = 0.02;
-const MISS_LSB_COUNT = 3;
+/** A billionth of a PWM period: far below any dead time, above the rounding of times. */
+const SAME_INSTANT_SHARE = 1e-9;
 
 type Sensing = ScenarioDocument["sensing"];
 
@@ -45,7 +49,6 @@ export function readSensing(document: ScenarioDocument): SensingFacts {
   const topV = Math.min(amplifier.outputMaxV, converter.fullScaleV);
   const spanV = isMidscale && referenceV !== null ? Math.min(topV - referenceV, referenceV - amplifier.outputMinV) : topV - amplifier.outputMinV;
   const fullScaleA = spanV / voltPerAmpere;
-  const stepA = converter.fullScaleV / 2 ** converter.bits / voltPerAmpere;
   return {
     site: sensing.site,
     isLegSite: sensing.site === "legTop" || sensing.site === "legBottom",
@@ -57,7 +60,9 @@ export function readSensing(document: ScenarioDocument): SensingFacts {
     outputMinV: amplifier.outputMinV,
     outputMaxV: amplifier.outputMaxV,
     fullScaleA,
-    sampleLimitA: Math.max(MISS_SHARE * fullScaleA, MISS_LSB_COUNT * stepA),
+    sampleLimitA: sampleLimitA(document),
+    samples: sampleSchedule(document),
+    instantS: SAME_INSTANT_SHARE / document.pwm.frequencyHz,
     readingTrace: readingTraceOf(sensing),
     periodS: 1 / document.pwm.frequencyHz,
     durationS: document.run.durationS,

@@ -2,10 +2,12 @@
 
 import { useMemo, useState } from "react";
 import type { Simulation, View } from "@/lib/engine/results";
+import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { rowAt } from "./event-rows";
 import { runStops } from "./run-stops";
+import { readSensing } from "./sensing-facts";
 import { STEP_WORDS, stepFrom, type StepKind } from "./steps";
-import { formatTime, timeFormat } from "./ticks";
+import { cursorFormat, formatTime } from "./ticks";
 import { usePlayback } from "./use-playback";
 import styles from "./steps.module.css";
 
@@ -13,7 +15,7 @@ import styles from "./steps.module.css";
 export type StepBarProps = {
   view: View;
   simulation: Simulation;
-  periodS: number;
+  document: ScenarioDocument;
   cursorS: number;
   onCursor: (timeS: number) => void;
   isPhone?: boolean;
@@ -21,21 +23,22 @@ export type StepBarProps = {
 
 const KEYS: Record<StepKind, string> = { event: "Left, Right", period: "Shift+Left, Shift+Right", milestone: "[ and ]", sample: ", and ." };
 
-export function StepBar({ view, simulation, periodS, cursorS, onCursor, isPhone = false }: StepBarProps) {
-  const stops = useMemo(() => runStops(simulation, view, periodS), [simulation, view, periodS]);
+export function StepBar({ view, simulation, document, cursorS, onCursor, isPhone = false }: StepBarProps) {
+  const facts = useMemo(() => readSensing(document), [document]);
+  const stops = useMemo(() => runStops(simulation, view, facts), [simulation, view, facts]);
   const [kind, setKind] = useState<StepKind>("event");
   const { isPlaying, toggle } = usePlayback(stops, cursorS, onCursor);
   const go = (which: StepKind, direction: 1 | -1) => onCursor(stepFrom(cursorS, which, direction, stops));
   const canGo = (which: StepKind, direction: 1 | -1) => stepFrom(cursorS, which, direction, stops) !== cursorS;
   if (isPhone) {
-    const index = rowAt(stops.events.map((timeS) => ({ timeS })), cursorS, periodS) + 1;
+    const index = rowAt(stops.events.map((timeS) => ({ timeS })), cursorS, facts.instantS) + 1;
     return (
       <div className={styles.phone} role="group" aria-label="Step through the run">
         <button type="button" aria-label={`Previous ${kind}`} disabled={!canGo(kind, -1)} onClick={() => go(kind, -1)}>
           <Chevron direction={-1} />
         </button>
         <div className={styles.middle}>
-          <b>{formatTime(cursorS, timeFormat({ fromS: 0, toS: simulation.durationS }, 800))}</b>
+          <b>{formatTime(cursorS, cursorFormat({ fromS: 0, toS: simulation.durationS }, facts.periodS))}</b>
           <label>
             event {index} of {stops.events.length} · step by{" "}
             <select value={kind} onChange={(event) => setKind(event.target.value as StepKind)}>

@@ -1,11 +1,11 @@
-import { SAME_INSTANT_SHARE } from "./event-rows";
+import { nextSample, type SampleSchedule } from "./sample-schedule";
 import { clamp } from "./scale";
 
 export type StepKind = "event" | "period" | "milestone" | "sample";
 export const STEP_WORDS: Record<StepKind, string> = { event: "Event", period: "Period", milestone: "Milestone", sample: "Sample" };
 
-/** Instants that each kind of step stops at; ascending. A period step keeps its place within the period, so it needs none. */
-export type StepStops = { events: readonly number[]; milestones: readonly number[]; samples: readonly number[]; periodS: number; durationS: number };
+/** Instants that each kind of step stops at, ascending; samples by their schedule. A period step keeps its place within the period. */
+export type StepStops = { events: readonly number[]; milestones: readonly number[]; samples: SampleSchedule; periodS: number; instantS: number; durationS: number };
 
 /** Nearest stop beyond `timeS` in the given direction; a stop within a billionth of a period of it counts as the present one. */
 export function nextStop(stops: readonly number[], timeS: number, direction: 1 | -1, slackS: number): number | null {
@@ -24,6 +24,6 @@ export function nextStop(stops: readonly number[], timeS: number, direction: 1 |
 /** Where a step leads; the present instant if there is nothing further that way. */
 export function stepFrom(timeS: number, kind: StepKind, direction: 1 | -1, stops: StepStops): number {
   if (kind === "period") return clamp(timeS + direction * stops.periodS, 0, stops.durationS);
-  const list = kind === "event" ? stops.events : kind === "milestone" ? stops.milestones : stops.samples;
-  return nextStop(list, timeS, direction, stops.periodS * SAME_INSTANT_SHARE) ?? timeS;
+  if (kind === "sample") return nextSample(stops.samples, timeS, direction, stops.instantS, stops.durationS) ?? timeS;
+  return nextStop(kind === "event" ? stops.events : stops.milestones, timeS, direction, stops.instantS) ?? timeS;
 }

@@ -119,4 +119,10 @@ export function timeFormat(window: { fromS: number; toS: number }, pixelCount: n
   return { factor, unit, decimals: Math.min(6, Math.max(2, Math.ceil(-Math.log10(pixelS) - 1e-9))) };
 }
 
+/** How the cursor's own time is written: to a thousandth of a PWM period, so that any two events read differently. */
+export function cursorFormat(window: { fromS: number; toS: number }, periodS: number): TimeFormat {
+  const format = timeFormat(window, 1);
+  return { ...format, decimals: Math.min(9, Math.max(2, Math.ceil(-Math.log10(periodS / 1000 / format.factor) - 1e-9))) };
+}
+
 export const formatTime = (timeS: number, format: TimeFormat): string => `${fixed(timeS / format.factor, format.decimals)} ${format.unit}`;

@@ -16,7 +16,7 @@ export function usePlayback(stops: StepStops, cursorS: number, onCursor: (timeS:
     if (!isPlaying) return;
     const timer = setInterval(() => {
       const { stops: now, cursorS: atS, onCursor: move } = latest.current;
-      const nextS = nextStop(now.events, atS, 1, now.periodS * 1e-9);
+      const nextS = nextStop(now.events, atS, 1, now.instantS);
       if (nextS === null) setPlaying(false);
       else move(nextS);
     }, STEP_MS);
