@@ -13,7 +13,14 @@ export type RevisionRow = {
   createdAt: Date;
   hasSummary: boolean;
 };
-export type NewestRevision = { number: number; authorName: string; createdAt: Date; document: ScenarioDocument };
+export type NewestRevision = {
+  id: string;
+  number: number;
+  authorId: string;
+  authorName: string;
+  createdAt: Date;
+  document: ScenarioDocument;
+};
 export type KeptDraft = {
   id: string;
   scenarioId: string;
@@ -96,7 +103,9 @@ export function requireNewestRevision(database: Database, scope: Scope, scenario
   return withScope(database, scope, async (tx) => {
     const [newest] = await tx
       .select({
+        id: revisions.id,
         number: revisions.number,
+        authorId: revisions.authorId,
         authorName: revisions.authorName,
         createdAt: revisions.createdAt,
         document: revisions.document,

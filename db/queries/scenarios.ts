@@ -50,7 +50,7 @@ export type ScenarioFilter = {
 };
 
 function matches(scope: Scope, filter: ScenarioFilter): SQL | undefined {
-  const word = filter.search?.trim();
+  const word = filter.search?.trim().slice(0, 120);
   const pattern = word ? `%${word.replace(/[\\%_]/g, "\\$&")}%` : undefined;
   const owner = filter.owner === "me" ? scope.userId : filter.owner;
   return and(

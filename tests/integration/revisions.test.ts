@@ -141,6 +141,32 @@ describe("saving a revision", () => {
     });
   });
 
+  it("a second time, because the first answer was lost, answers the revision that is there and keeps no draft", async () => {
+    const { designer, lead } = world.scopes;
+    const scenarioId = await newScenario();
+    const again = { scenarioId, baseRevisionNumber: 1, document: shortDocument("Twice", 22) };
+    const first = await saveRevision(database.app.db, designer, again);
+    expect(first).toMatchObject({ ok: true, value: { number: 2 } });
+    expect(await saveRevision(database.app.db, designer, again)).toEqual(first);
+    expect(await listKeptDrafts(database.app.db, designer, { scenarioId })).toEqual({ ok: true, value: [] });
+    // the same document from someone else is a conflict: that person has not saved anything yet
+    expect(await saveRevision(database.app.db, lead, again)).toMatchObject({ code: "edit.conflict" });
+  });
+
+  it("from a kept draft needs the right to save, also for the draft's own author", async () => {
+    const { trainer } = world.scopes;
+    const scenarioId = await newScenario();
+    const [draft] = await database.owner.db.execute<{ id: string }>(sql`
+      insert into kept_drafts (workspace_id, scenario_id, author_id, base_number, document)
+      select workspace_id, scenario_id, ${trainer.userId}, 1, document from revisions where scenario_id = ${scenarioId} returning id`);
+    const kept = { scenarioId, draftId: draft!.id, baseRevisionNumber: 1 };
+    expect(await keepMineAsRevision(database.app.db, trainer, kept)).toMatchObject({
+      ok: false,
+      code: "access.denied",
+    });
+    expect(await keepMineAsRevision(database.app.db, null, kept)).toMatchObject({ ok: false, code: "auth.required" });
+  });
+
   it("of an archived scenario is refused", async () => {
     const { designer } = world.scopes;
     const scenarioId = await newScenario();
@@ -153,8 +179,12 @@ describe("saving a revision", () => {
   it("writes one audit row in the same transaction, also for a conflict", async () => {
     const { designer } = world.scopes;
     const scenarioId = await newScenario();
-    for (const baseRevisionNumber of [1, 1])
-      await saveRevision(database.app.db, designer, { scenarioId, baseRevisionNumber, document: shortDocument() });
+    for (const voltageV of [25, 26])
+      await saveRevision(database.app.db, designer, {
+        scenarioId,
+        baseRevisionNumber: 1,
+        document: shortDocument("Sluice gate drive", voltageV),
+      });
     const audited = await database.owner.db.execute(
       sql`select actor_name, deed, detail, correlation_id from audit where thing_id = ${scenarioId} order by id`,
     );
