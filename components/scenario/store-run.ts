@@ -1,3 +1,4 @@
+import { revealTime } from "@/components/plot/scale";
 import type { InstantReading, View } from "@/lib/engine/results";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import type { EngineFailure, Progress, RunReply } from "@/workers/protocol";
@@ -14,6 +15,8 @@ export type RunActions = {
   viewArrived: (view: View) => void;
   readingArrived: (reading: InstantReading) => void;
   setCursor: (timeS: number) => void;
+  /** To an instant that may lie outside the window: the window moves only as far as it has to. */
+  goTo: (timeS: number) => void;
   setPin: (timeS: number | null) => void;
   setViewWindow: (next: TimeWindow) => void;
   pinFigure: (name: string | null) => void;
@@ -51,6 +54,11 @@ export function runActions(set: SetState, get: GetState): RunActions {
     },
     readingArrived: (reading) => set({ reading }),
     setCursor: (timeS) => set({ cursorS: clampTo(timeS, get().shown?.simulation.durationS ?? get().document.run.durationS) }),
+    goTo: (timeS) => {
+      const { viewWindow, shown, document } = get();
+      const durationS = shown?.simulation.durationS ?? document.run.durationS;
+      set({ cursorS: clampTo(timeS, durationS), viewWindow: revealTime(viewWindow, clampTo(timeS, durationS), durationS) });
+    },
     setPin: (pinS) => set({ pinS }),
     setViewWindow: (viewWindow) => set({ viewWindow }),
     pinFigure: (pinnedFigure) => set({ pinnedFigure }),

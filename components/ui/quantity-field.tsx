@@ -112,7 +112,7 @@ export function QuantityField(props: QuantityFieldProps) {
 
   return (
     <>
-      <span className={`${styles.field} ${props.className ?? ""}`} data-fault={isRefused || problem !== undefined || undefined} data-disabled={props.isDisabled || undefined}>
+      <span className={`${styles.field} ${props.className ?? ""}`} data-fault={isRefused || problem !== undefined || undefined} data-pending={(typed !== null && isTouched) || undefined} data-disabled={props.isDisabled || undefined}>
         <input
           id={props.id}
           type="text"

@@ -1,5 +1,7 @@
 import { render } from "@testing-library/react";
+import { AppRouterContext, type AppRouterInstance } from "next/dist/shared/lib/app-router-context.shared-runtime";
 import type { ReactNode } from "react";
+import { vi } from "vitest";
 import type { DraftStorage, KeptInBrowser } from "@/components/scenario/draft-keeper";
 import { ScenarioProvider, useWorkbench } from "@/components/scenario/provider";
 import type { ScenarioActions } from "@/components/scenario/scenario-actions";
@@ -9,6 +11,14 @@ import { parseScenario, type ScenarioDocument } from "@/lib/scenario/schema";
 import { baseDocument } from "@/tests/support/oracle/base-document";
 import { EngineTasks } from "@/workers/engine-tasks";
 import type { EngineClient } from "@/workers/protocol";
+
+// the first drawing in a cold jsdom on a busy machine takes seconds
+vi.setConfig({ testTimeout: 30_000 });
+
+/** Where the page went, instead of going there. */
+export const router = { push: vi.fn(), replace: vi.fn(), refresh: vi.fn(), back: vi.fn(), forward: vi.fn(), prefetch: vi.fn() };
+/** Next's navigation as components of the app find it. */
+export const WithRouter = ({ children }: { children: ReactNode }) => <AppRouterContext.Provider value={router as unknown as AppRouterInstance}>{children}</AppRouterContext.Provider>;
 
 /** A short run with a reversal, so that a test's run takes milliseconds. */
 export function shortDocument(change: (document: ScenarioDocument) => void = () => undefined): ScenarioDocument {
@@ -69,10 +79,12 @@ export function renderScenario(children: ReactNode, options: Options = {}) {
   };
   const client = options.client ?? directClient;
   const rendered = render(
+    <WithRouter>
     <ScenarioProvider initial={initialOf(options.document ?? shortDocument(), options.initial)} actions={options.actions ?? {}} createClient={client} storage={options.storage ?? memoryStorage()}>
       <Hold />
       {children}
-    </ScenarioProvider>,
+    </ScenarioProvider>
+    </WithRouter>,
   );
   if (!held.store) throw new Error("no store");
   return { ...rendered, store: held.store };

@@ -1,0 +1,143 @@
+"use client";
+
+import type { ReactNode } from "react";
+import type { Notice, Severity } from "@/lib/engine/results";
+import { inputAt } from "@/lib/scenario/inputs";
+import { labelOf } from "@/lib/scenario/diff";
+import { formatQuantity } from "@/lib/units/format";
+import { useScenario, useWorkbench } from "./provider";
+import styles from "./notices.module.css";
+
+const RANK: Record<Severity, number> = { fault: 0, caution: 1, note: 2 };
+
+/** What the run and the document have to say: the finding first, why, and a link that goes there. */
+export function NoticesPanel({ onGo }: { onGo?: (where: "run" | "inputs") => void }) {
+  const { store, runNow } = useWorkbench();
+  const findings = useScenario((state) => state.findings);
+  const notices = useScenario((state) => state.shown?.simulation.notices ?? NONE);
+  const run = useScenario((state) => state.run);
+  const document = useScenario((state) => state.document);
+  const goToField = (path: string) => {
+    onGo?.("inputs");
+    store.getState().wantField(path);
+  };
+  const goToTime = (timeS: number) => {
+    onGo?.("run");
+    store.getState().goTo(timeS);
+  };
+  const sorted = [...notices].sort((a, b) => RANK[a.severity] - RANK[b.severity]);
+  return (
+    <section className={styles.notices} aria-label="Notices">
+      <h2 className={styles.head}>
+        <span className={styles.caps}>Notices</span>
+        <NoticeCount />
+      </h2>
+      <ul className={styles.list}>
+        {run.phase === "failed" && run.problem && (
+          <Item severity="fault" title={run.problem.title}>
+            <p>{run.problem.text} The last good run is still shown.</p>
+            <p className={styles.links}>
+              <button type="button" onClick={() => runNow()}>
+                Run again
+              </button>
+              <button type="button" onClick={() => store.getState().undo()}>
+                Undo the last change
+              </button>
+            </p>
+          </Item>
+        )}
+        {findings.map((finding) => (
+          <Item key={`${finding.path} ${finding.code}`} severity="fault" title={labelOf(finding.path, document)}>
+            <p>{finding.text} The run keeps the last values that fit together.</p>
+            <p className={styles.links}>
+              <button type="button" onClick={() => goToField(finding.path)}>
+                Go to {fieldWords(finding.path)}
+              </button>
+            </p>
+          </Item>
+        ))}
+        {sorted.map((notice) => (
+          <Item key={`${notice.code} ${notice.path ?? ""} ${notice.timeS ?? ""}`} severity={notice.severity} title={notice.title}>
+            <p>{notice.text}</p>
+            <Links notice={notice} onTime={goToTime} onField={goToField} />
+          </Item>
+        ))}
+        {sorted.length === 0 && findings.length === 0 && run.phase !== "failed" && <li className={styles.none}>Nothing to say about this run.</li>}
+      </ul>
+    </section>
+  );
+}
+
+const NONE: readonly Notice[] = [];
+const fieldWords = (path: string): string => inputAt(path)?.label.toLowerCase() ?? "the field";
+
+function Links({ notice, onTime, onField }: { notice: Notice; onTime: (timeS: number) => void; onField: (path: string) => void }) {
+  const { timeS, path } = notice;
+  if (timeS === undefined && path === undefined) return null;
+  return (
+    <p className={styles.links}>
+      {timeS !== undefined && (
+        <button type="button" onClick={() => onTime(timeS)}>
+          Go to {formatQuantity(timeS, "s", { digits: 6 }).text}
+        </button>
+      )}
+      {path !== undefined && (
+        <button type="button" onClick={() => onField(path)}>
+          Change {fieldWords(path)}
+        </button>
+      )}
+    </p>
+  );
+}
+
+const countOf = (count: number, word: string): string => `${count} ${word}${count === 1 ? "" : "s"}`;
+
+/** "1 fault · 2 cautions": beside the title, and on the phone's tab. */
+export function NoticeCount() {
+  const words = useScenario((state) => {
+    const notices = state.shown?.simulation.notices ?? NONE;
+    const faults = notices.filter((notice) => notice.severity === "fault").length + state.findings.length + (state.run.phase === "failed" ? 1 : 0);
+    const cautions = notices.filter((notice) => notice.severity === "caution").length;
+    return [faults > 0 ? countOf(faults, "fault") : "", cautions > 0 ? countOf(cautions, "caution") : ""].filter(Boolean).join(" · ") || "none";
+  });
+  return <span className={styles.count}>{words}</span>;
+}
+
+function Item({ severity, title, children }: { severity: Severity; title: string; children: ReactNode }) {
+  return (
+    <li className={styles.item} data-severity={severity}>
+      <SeverityGlyph severity={severity} />
+      <div>
+        <b>{title}</b>
+        {children}
+      </div>
+    </li>
+  );
+}
+
+/** Octagon, triangle, ring: shape first, hue second. */
+export function SeverityGlyph({ severity }: { severity: Severity }) {
+  const name = { fault: "Fault", caution: "Caution", note: "Note" }[severity];
+  return (
+    <svg width="16" height="16" viewBox="0 0 16 16" role="img" aria-label={name}>
+      {severity === "fault" && (
+        <>
+          <path d="M5.1 1h5.8L15 5.1v5.8L10.9 15H5.1L1 10.9V5.1z" fill="var(--fault)" />
+          <path d="M8 4v5M8 10.6v1.6" stroke="var(--on-ink)" strokeWidth="1.8" />
+        </>
+      )}
+      {severity === "caution" && (
+        <>
+          <path d="M8 1.5 15 14H1z" fill="var(--caution-tint)" stroke="var(--caution)" strokeWidth="1.3" />
+          <path d="M8 5.6v4.6M8 11.2v1.5" stroke="var(--caution)" strokeWidth="1.6" />
+        </>
+      )}
+      {severity === "note" && (
+        <>
+          <circle cx="8" cy="8" r="6.4" fill="none" stroke="var(--ink2)" strokeWidth="1.2" />
+          <path d="M8 7v5M8 4.2v1.6" stroke="var(--ink2)" strokeWidth="1.6" />
+        </>
+      )}
+    </svg>
+  );
+}

@@ -1,0 +1,62 @@
+"use client";
+
+import { useRef, useState, type ReactNode } from "react";
+import type { ScenarioView } from "@/db/queries/scenarios";
+import { createEngineClient } from "@/workers/engine-client";
+import type { EngineClient } from "@/workers/protocol";
+import { Banners } from "./banners";
+import { DeskLayout } from "./desk-layout";
+import type { DraftStorage } from "./draft-keeper";
+import { PhoneLayout } from "./phone-layout";
+import { ProgressBorder } from "./progress-border";
+import { ScenarioProvider } from "./provider";
+import { SaidLine } from "./said";
+import type { ScenarioActions } from "./scenario-actions";
+import type { InitialScenario } from "./scenario-state";
+import { useLayout } from "./use-layout";
+import { usePageKeys } from "./use-page-keys";
+import { WorkbenchDialogs, type Opened } from "./workbench-dialogs";
+import { WorkbenchFoot } from "./workbench-foot";
+import { WorkbenchHead } from "./workbench-head";
+import styles from "./workbench.module.css";
+
+export type ScenarioWorkbenchProps = {
+  initial: InitialScenario;
+  /** State of the revision; `null` for a guest. */
+  state?: ScenarioView["state"] | null;
+  actions?: Partial<ScenarioActions>;
+  mayDuplicate?: boolean;
+  /** The button that shares; the page knows how. */
+  share?: ReactNode;
+  createClient?: () => EngineClient;
+  storage?: DraftStorage;
+};
+
+/** The whole job on one page: inputs, bridge, waveforms, figures and notices, live as values change. */
+export function ScenarioWorkbench({ initial, actions, createClient = createEngineClient, storage, ...rest }: ScenarioWorkbenchProps) {
+  return (
+    <ScenarioProvider initial={initial} createClient={createClient} {...(actions ? { actions } : {})} {...(storage ? { storage } : {})}>
+      <Workbench {...rest} />
+    </ScenarioProvider>
+  );
+}
+
+function Workbench({ state = null, mayDuplicate = false, share }: Pick<ScenarioWorkbenchProps, "state" | "mayDuplicate" | "share">) {
+  const [opened, setOpened] = useState<Opened | null>(null);
+  const root = useRef<HTMLDivElement>(null);
+  const layout = useLayout();
+  usePageKeys(root, opened, setOpened);
+  return (
+    <div ref={root} className={styles.workbench} data-layout={layout}>
+      <WorkbenchHead state={state} onOpen={setOpened} mayDuplicate={mayDuplicate} share={share} />
+      <ProgressBorder />
+      <div className={styles.banners}>
+        <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} />
+      </div>
+      {layout === "phone" ? <PhoneLayout /> : <DeskLayout isNarrow={layout === "narrow"} />}
+      {layout !== "phone" && <WorkbenchFoot />}
+      <SaidLine />
+      <WorkbenchDialogs opened={opened} onClose={() => setOpened(null)} />
+    </div>
+  );
+}
