@@ -9,7 +9,7 @@ import { FAULT_KINDS, LOAD_KINDS } from "./kinds";
 /** Turns zod's issues into findings in the product's words: what stands there, then what may. */
 
 const DEPTH_MAX = 12;
-const VALUES_MAX = 20_000; // a full document (200 points, 200 specials, 200 shaft entries, 50 faults) has under 2500
+const VALUES_MAX = 5000; // a full document (200 points, 200 specials, 200 shaft entries, 50 faults) has under 2500
 const FINDINGS_MAX = 500;
 
 const isObject = (value: unknown): value is Record<string, unknown> => typeof value === "object" && value !== null;
@@ -121,14 +121,14 @@ function fromIssue(issue: Issue, root: unknown, base: PropertyKey[]): Finding[] 
     if (keys.at(-1) === "kind") return [choiceFinding(path, value, kindsAt(path))];
   }
   if (issue.code === "invalid_value") return [choiceFinding(path, value, issue.values.map(String))];
-  if (value === undefined) return [{ path, code: "field.missing", text: `${nameOf(path)} is missing.` }];
+  const expected = issue.code === "invalid_type" ? (EXPECTED[issue.expected] ?? issue.expected) : "an object";
+  if (value === undefined) return [{ path, code: "field.missing", text: `${nameOf(path)} is missing; ${expected} is expected.` }];
   if (issue.code === "too_big" || issue.code === "too_small") return [lengthFinding(path, value)];
   if (issue.code === "custom") {
     return [
       { path, code: "text.characters", text: `${nameOf(path)} must hold printable characters, and not only spaces.` },
     ];
   }
-  const expected = issue.code === "invalid_type" ? (EXPECTED[issue.expected] ?? issue.expected) : "an object";
   return [{ path, code: "type", text: `${nameOf(path)} is ${shown(value)}; ${expected} is expected.` }];
 }
 

@@ -6,7 +6,7 @@ const NAMES: Readonly<Record<string, string>> = {
   "": "The document",
   format: "Format",
   title: "Title",
-  notes: "Notes",
+  notes: "Text of the notes",
   supply: "Supply",
   "supply.acceptsReturn": "Supply takes current back",
   bridge: "Bridge",

@@ -106,10 +106,11 @@ function accepted(value: number, unit: string, range: ParseOptions["range"], not
 function bareNumber(number: string, exponent: number, unit: string, options: ParseOptions): ParsedQuantity {
   const plain = Number(`${number}e${exponent}`);
   const info = unitInfo(unit);
-  const power =
-    options.displayPrefix && info.takesPrefix ? prefixPower(options.displayPrefix) : info.shown ? 0 : undefined;
-  if (power === undefined || (info.shown && options.displayPrefix === undefined))
-    return accepted(plain, unit, options.range);
+  const isAsShown = options.displayPrefix
+    ? info.takesPrefix
+    : info.shown && (!info.takesPrefix || options.displayPrefix === "");
+  const power = options.displayPrefix && info.takesPrefix ? prefixPower(options.displayPrefix) : 0;
+  if (!isAsShown || power === undefined) return accepted(plain, unit, options.range);
   const asShown = Number(`${number}e${exponent + power + asFactor(info.shown?.size ?? 1).power}`);
   if (!isInside(asShown, options.range) && isInside(plain, options.range)) {
     const baseName = unit === "share" ? "parts of one" : unit;
