@@ -17,6 +17,8 @@ const DEFAULT_PORT = 3000;
 const RESTARTS_PER_MINUTE = 3;
 const LOG_LIMIT_BYTES = 8e6;
 
+// the tests of starting and stopping use the build that the other browser tests use
+const isForTests = process.env.SLACKWATER_TEST_RUN === "1";
 const running = { web: null, database: null };
 const beginning = new Set();
 let isStopping = false;
@@ -35,7 +37,7 @@ async function start() {
   const urls = process.env.DATABASE_URL ? givenDatabaseEnvironment(process.env, secrets) : await startDatabase(secrets);
   await step("migrate", () => migrate(urls));
   if (isDemo) await step("demo data", () => seed(urls));
-  await buildWhenStale();
+  await buildWhenStale({ isForTests });
   const port = await chooseWebPort();
   const url = process.env.AUTH_URL ?? `http://localhost:${port}`;
   const environment = {
@@ -47,7 +49,7 @@ async function start() {
     // the server works with the application's role alone
     DATABASE_OWNER_URL: undefined,
   };
-  await keepRunning("web", () => startWeb({ port, distDir: distFolder(false), environment, log: openLog("web") }));
+  await keepRunning("web", () => startWeb({ port, distDir: distFolder(isForTests), environment, log: openLog("web") }));
   lock.note({ url });
   say(`\nSlackwater is ready at ${url}`);
   if (isDemo) say("Demo accounts are on the sign-in page. Without them: SLACKWATER_DEMO=0 npm start");

@@ -63,7 +63,7 @@ async function runPlaywright(database) {
   endings.push(web.stop);
   const report = join(reportFolder, "playwright.json");
   const args = ["node_modules/@playwright/test/cli.js", "test", "-c", "tests/e2e/playwright.config.ts", ...extra];
-  const env = { ...process.env, ...urls, SLACKWATER_URL: url, SLACKWATER_CHROMIUM: findChromium(), PLAYWRIGHT_JSON_OUTPUT_FILE: report };
+  const env = { ...process.env, ...urls, SLACKWATER_URL: url, SLACKWATER_CHROMIUM: findChromium(), SLACKWATER_TEST_RUN: "1", PLAYWRIGHT_JSON_OUTPUT_FILE: report };
   const code = await run(process.execPath, args, { cwd: root, env });
   return readCounts(code, report, ({ stats }) => ({ passed: stats.expected + stats.flaky, failed: stats.unexpected, skipped: stats.skipped }));
 }
