@@ -1,5 +1,6 @@
 import type { ScenarioDocument } from "../../scenario/schema";
 import { isHighState, isLowState, LEG_THROUGH } from "../model/legs";
+import { SAME_INSTANT_S } from "../model/parameters";
 import type { EventLog } from "../solver/event-log";
 import { bracketedRoot } from "../solver/locate";
 import { AT_POLE1, AT_POLE2, buildOperator, OPERATOR_LENGTH } from "../solver/operator";
@@ -22,6 +23,10 @@ const CLIP_BAND_V = 1e-11;
 const RAMP_RATE = 0.25;
 const RAMP_PIECES_MAX = 64;
 const WEIGHT_RING = 6;
+/** Parts of a piece in which the slope of an output is looked at for extrema. */
+const EXTREMUM_SCAN = 8;
+/** Rates this close to the slew limit, as a share, are at it. */
+const SLEW_BAND = 1e-6;
 
 /**
  * The sensing channels beside the power stage: shunt voltages (with commutation ramps, D-20), offset, common-mode error,
@@ -208,8 +213,9 @@ export class SensorBank implements Rider {
       if (!this.isUsed[k]) continue;
       const input = this.isRamp ? this.rampInputAt(k, 0) : this.inputAt(k, sense, stage.x);
       const rate = chain.poles.amplifierRadPerS * (input - this.z[k]!);
-      if (slewing[k] === 0 && Math.abs(rate) > chain.slewVPerS * (1 + 1e-6)) slewing[k] = rate > 0 ? 1 : -1;
-      else if (slewing[k] !== 0 && slewing[k]! * rate < chain.slewVPerS * (1 - 1e-6)) slewing[k] = 0;
+      // at the limit itself the class that the last event left stays
+      if (Math.abs(rate) > chain.slewVPerS * (1 + SLEW_BAND)) slewing[k] = rate > 0 ? 1 : -1;
+      else if (Math.abs(rate) < chain.slewVPerS * (1 - SLEW_BAND)) slewing[k] = 0;
     }
   }
 
@@ -628,7 +634,7 @@ export class SensorBank implements Rider {
       return (sign === 0 ? Math.abs(rate) : sign * rate) - chain.slewVPerS;
     };
     const endExcess = excess(stage.xEnd, 1);
-    const bandVPerS = 1e-6 * chain.slewVPerS;
+    const bandVPerS = SLEW_BAND * chain.slewVPerS;
     if (sign === 0 ? endExcess <= bandVPerS : endExcess >= -bandVPerS) return -1;
     const startInput = this.isRamp ? this.rampInputAt(k, 0) : this.inputAt(k, sense, stage.x);
     const startRate = chain.poles.amplifierRadPerS * (startInput - this.z[k]!);
@@ -662,7 +668,8 @@ export class SensorBank implements Rider {
       this.z[k] = this.zEnd[k]!;
       this.y[k] = this.yEnd[k]!;
       if (this.pendingSlew[k] === 0) continue;
-      if (h === this.pendingSlewS[k]) this.slewing[k] = this.pendingSlew[k] === 2 ? 0 : this.pendingSlew[k]!;
+      // several outputs may reach their limit at one instant (the pair and its difference do)
+      if (Math.abs(h - this.pendingSlewS[k]!) <= SAME_INSTANT_S) this.slewing[k] = this.pendingSlew[k] === 2 ? 0 : this.pendingSlew[k]!;
       this.pendingSlew[k] = 0;
     }
     if (!this.isRamp) return;
@@ -734,6 +741,56 @@ export class SensorBank implements Rider {
     this.yAt.set(this.yEnd);
     this.zEnd.set(this.keep.subarray(0, 3));
     this.yEnd.set(this.keep.subarray(3));
+  }
+
+  /** Visits the extrema of output k inside the piece tried last, zAt and yAt filled at each. */
+  visitExtrema(k: number, stage: PowerStage, visit: () => void): void {
+    const sense = this.rows(stage.slot);
+    const h = stage.piece[PIECE_LENGTH]!;
+    if (this.isRamp) this.fillNodes(stage, sense, h);
+    this.keep.set(this.zEnd);
+    this.keep.set(this.yEnd, 3);
+    const slopeAt = (tau: number) => {
+      this.probe(stage, sense, tau);
+      return this.holdsPin ? this.pinFilterSlope(k, true) : this.probedSlope(k, stage, sense, tau);
+    };
+    let fromS = 0;
+    let from = this.holdsPin ? this.pinFilterSlope(k, false) : this.outputSlope(k, false, stage, sense);
+    for (let n = 1; n <= EXTREMUM_SCAN; n++) {
+      const toS = (h * n) / EXTREMUM_SCAN;
+      const to = slopeAt(toS);
+      if (from * to < 0) {
+        const atS = bracketedRoot((tau, out) => {
+          out[0] = slopeAt(tau);
+          out[1] = 0;
+        }, fromS, from, toS, to);
+        this.probe(stage, sense, atS);
+        this.zAt.set(this.zEnd);
+        this.yAt.set(this.yEnd);
+        visit();
+      }
+      fromS = toS;
+      from = to;
+    }
+    this.probe(stage, sense, h);
+    this.zEnd.set(this.keep.subarray(0, 3));
+    this.yEnd.set(this.keep.subarray(3));
+  }
+
+  /** Largest (sign +1) or smallest (sign -1) voltage that output k can reach in the piece tried last: real poles only average. */
+  boundV(k: number, sign: 1 | -1): number {
+    const inputs = sign > 0 ? this.inputMax[k]! : this.inputMin[k]!;
+    const ownV = this.holdsPin ? this.y[k]! - this.base[k]! : this.y[k]!;
+    return this.base[k]! + sign * Math.max(sign * inputs, sign * this.z[k]!, sign * ownV);
+  }
+
+  private pinFilterSlope(k: number, isEnd: boolean): number {
+    const { chain } = this;
+    const stuckV = this.stuckAt(k);
+    const clip = this.clip[k]!;
+    const z = isEnd ? this.zEnd[k]! : this.z[k]!;
+    const pinV = stuckV ?? (clip > 0 ? chain.outputMaxV : clip < 0 ? chain.outputMinV : this.base[k]! + z);
+    return chain.poles.filterRadPerS * (pinV - (isEnd ? this.yEnd[k]! : this.y[k]!));
   }
 
   readonly zAt = new Float64Array(3);

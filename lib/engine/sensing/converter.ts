@@ -22,7 +22,8 @@ export function lsbV(bits: number, fullScaleV: number, input: "unipolar" | "diff
 const NO_OFFSETS: readonly number[] = [];
 
 type Item = { offsetS: number; index: number; isEnd: boolean };
-type Open = { timeS: number; trueA: number; integral: [number, number, number] };
+/** A conversion whose aperture is open; `meanA` of the period it began in, once that has ended. */
+type Open = { timeS: number; trueA: number; integral: [number, number, number]; meanA?: number };
 type Sums = { count: number; codeA: number; codeB: number; code: number };
 
 /**
@@ -49,12 +50,16 @@ export class Sampler implements Observer {
     const { perPeriod, phase, apertureS } = this.converter;
     const { periodS } = machine;
     this.items = [];
+    const offsets: number[] = [];
     for (let j = 0; j < perPeriod; j++) {
       const share = phase + j / perPeriod;
-      const offsetS = (share - Math.floor(share)) * periodS;
-      this.items.push({ offsetS, index: j, isEnd: false });
-      if (apertureS > 0) this.items.push({ offsetS: (offsetS + apertureS) % periodS, index: j, isEnd: true });
+      offsets.push((share - Math.floor(share)) * periodS);
     }
+    // conversions are numbered in time order (D-37)
+    offsets.sort((a, b) => a - b).forEach((offsetS, index) => {
+      this.items.push({ offsetS, index, isEnd: false });
+      if (apertureS > 0) this.items.push({ offsetS: (offsetS + apertureS) % periodS, index, isEnd: true });
+    });
     this.items.sort((a, b) => a.offsetS - b.offsetS || Number(b.isEnd) - Number(a.isEnd));
     this.offsets = this.items.map((item) => item.offsetS);
     this.wantsIntegral = apertureS > 0;
@@ -78,16 +83,17 @@ export class Sampler implements Observer {
   }
 
   private endPeriod(): void {
-    if (this.pending.length > 0) {
-      const meanA = this.periodIntegralAs / this.lengthOfPeriod();
-      for (const conversion of this.pending) {
-        conversion.meanA = meanA;
-        this.conversions.push(conversion);
-        this.onConversion?.(conversion);
-      }
-      this.pending = [];
-    }
+    const meanA = this.periodIntegralAs / this.lengthOfPeriod();
+    for (const open of this.opened.values()) open.meanA ??= meanA;
+    for (const conversion of this.pending) this.emit(conversion, meanA);
+    this.pending = [];
     this.periodIntegralAs = 0;
+  }
+
+  private emit(conversion: Conversion, meanA: number): void {
+    conversion.meanA = meanA;
+    this.conversions.push(conversion);
+    this.onConversion?.(conversion);
   }
 
   private lengthOfPeriod(): number {
@@ -119,14 +125,15 @@ export class Sampler implements Observer {
     if (!open) return;
     this.opened.delete(key);
     for (let k = 0; k < 3; k++) this.volts[k] = (this.running[k]! - open.integral[k]!) / apertureS;
-    this.convert(open.timeS, open.trueA, key);
+    this.convert(open.timeS, open.trueA, key, open.meanA);
   }
 
   private startOffset(index: number): number {
     return this.items.find((item) => item.index === index && !item.isEnd)!.offsetS;
   }
 
-  private convert(timeS: number, trueA: number, serial: number): void {
+  /** `meanA`: mean current of the conversion's period if that has ended already. */
+  private convert(timeS: number, trueA: number, serial: number, meanA?: number): void {
     const { sensing } = this.machine.document;
     const { bits, fullScaleV, input, average } = sensing.converter;
     const { chain, volts } = { chain: this.bank.chain, volts: this.volts };
@@ -152,7 +159,7 @@ export class Sampler implements Observer {
     const zeroV = isMidscale && input === "unipolar" ? sensing.reference!.voltageV : 0;
     const meanCode = sums.code / average;
     const hasLegCodes = !isMidscale && !isDifference;
-    this.pending.push({
+    const conversion: Conversion = {
       timeS,
       codeA: hasLegCodes ? sums.codeA / average : null,
       codeB: hasLegCodes && chain.isLegSite ? sums.codeB / average : null,
@@ -160,7 +167,9 @@ export class Sampler implements Observer {
       reconstructedA: (meanCode * lsbV(bits, fullScaleV, input) - zeroV) / (chain.gain * sensing.shunt.resistanceOhm),
       trueA,
       meanA: 0,
-    });
+    };
+    if (meanA === undefined) this.pending.push(conversion);
+    else this.emit(conversion, meanA);
   }
 
   piece(): void {

@@ -136,7 +136,7 @@ export class FigureMeter implements Observer {
     s.emfMismatchJ += w * (p.backEmfVPerRadPerS - p.torqueNmPerA) * i * speed;
     if (p.isLocked || mode.shaftSign === 0) return;
     const activeNm = p.activeOpposingNm * mode.shaftSign > 0 ? p.activeOpposingNm : p.activeDrivingNm;
-    s.frictionJ += w * speed * (p.viscousNmPerRadPerS * speed + mode.shaftSign * (p.coulombNm + p.constantNm) + activeNm + p.fanNmPerRadPerS2 * speed * Math.abs(speed));
+    s.frictionJ += w * speed * (p.viscousNmPerRadPerS * speed + mode.shaftSign * (stage.coulombNm + p.constantNm) + activeNm + p.fanNmPerRadPerS2 * speed * Math.abs(speed));
   }
 
   private addShunts(p: StageParameters, w: number, i: number, topA: number, topB: number, bottomA: number, bottomB: number, bridge: number): void {
@@ -168,15 +168,21 @@ export class FigureMeter implements Observer {
       if (x) this.noteState(x, rows);
     }
     const { bank } = this;
-    const { chain } = bank;
     const isMidscale = bank.isRead[OUT_COMBINED] || this.isSingleMidscale();
     for (let k = 0; k < 3; k++) {
       if (!bank.isRead[k]) continue;
-      for (const v of [bank.outputV(k, bank.z, bank.y), bank.outputV(k, bank.zEnd, bank.yEnd)]) {
-        const above = chain.outputMaxV - v;
-        this.headroomV = Math.min(this.headroomV, isMidscale ? Math.min(above, v - chain.outputMinV) : above);
-      }
+      this.noteHeadroom(bank.outputV(k, bank.z, bank.y), isMidscale);
+      this.noteHeadroom(bank.outputV(k, bank.zEnd, bank.yEnd), isMidscale);
+      // the scan for extrema is worth its cost only where the piece could bring a smaller headroom
+      const least = Math.min(bank.chain.outputMaxV - bank.boundV(k, 1), isMidscale ? bank.boundV(k, -1) - bank.chain.outputMinV : Infinity);
+      if (least < this.headroomV) bank.visitExtrema(k, stage, () => this.noteHeadroom(bank.outputV(k, bank.zAt, bank.yAt), isMidscale));
     }
+  }
+
+  private noteHeadroom(v: number, isMidscale: boolean): void {
+    const { chain } = this.bank;
+    const above = chain.outputMaxV - v;
+    this.headroomV = Math.min(this.headroomV, isMidscale ? Math.min(above, v - chain.outputMinV) : above);
   }
 
   private isSingleMidscale(): boolean {

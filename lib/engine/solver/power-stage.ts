@@ -23,6 +23,8 @@ export const PIECE_LENGTH = 1;
 export const PIECE_STAGE_EVENT = 2;
 export const PIECE_RIDER_EVENT = 3;
 
+const RISING_FRICTION_ERROR = 1e-8;
+
 const RING = 12; // durations kept per mode: a PWM period has at most about ten different ones
 
 /** A mode with its spectrum and the operators built for it; refilled in place when parameters change. */
@@ -57,6 +59,8 @@ export class PowerStage {
   gateB = 0;
   shaftSign = 0;
   sourceConducts = true;
+  /** Coulomb friction that acts in the present piece, N m. */
+  coulombNm = 0;
   /** Rises with every change of parameters: modes filled before are stale. */
   version = 0;
   /** Rises with every refill of a mode, so that what others derive from it can be kept beside it. */
@@ -77,6 +81,7 @@ export class PowerStage {
 
   setParameters(parameters: StageParameters): void {
     this.parameters = parameters;
+    this.coulombNm = parameters.coulombNm;
     this.version++;
     if (!parameters.hasBusState) this.x[2] = parameters.sourceV;
     if (parameters.isLocked) {
@@ -181,11 +186,13 @@ export class PowerStage {
     const sinceChangeS = this.piece[PIECE_START]! - changedAtS;
     let stretchS = h;
     if (p.coulombRateNmPerS !== 0 && this.shaftSign !== 0) {
-      // middle value over a sixteenth of a period: error of the speed below rate h^2/(8 J)
-      stretchS = Math.min(stretchS, periodS / 16);
+      // the middle value is off by rate h^2/(8 J) in speed at most: held to 1e-8 of the speed
+      const speed = Math.max(Math.abs(this.x[1]!), 1e-2);
+      const longestS = Math.sqrt((8 * p.inertiaKgM2 * RISING_FRICTION_ERROR * speed) / Math.abs(p.coulombRateNmPerS));
+      stretchS = Math.min(stretchS, Math.max(longestS, periodS / 1024));
       this.version++;
-      const baseNm = p.coulombNm;
-      this.parameters = { ...p, coulombNm: baseNm + p.coulombRateNmPerS * (sinceChangeS + 0.5 * stretchS) };
+      this.coulombNm = p.coulombNm + p.coulombRateNmPerS * (sinceChangeS + 0.5 * stretchS);
+      this.parameters = { ...p, coulombNm: this.coulombNm };
       this.enter(this.mode.legA, this.mode.legB);
       this.parameters = p;
       this.piece[PIECE_LENGTH] = stretchS;
