@@ -11,12 +11,14 @@ import controls from "./controls.module.css";
 import styles from "./workbench.module.css";
 
 /** One line each under the sub-head: what came back from a closed tab, whose revision came first, what this role may do. */
-export function Banners({ onOpen, mayDuplicate }: { onOpen: (dialog: Opened) => void; mayDuplicate: boolean }) {
+type Props = { onOpen: (dialog: Opened) => void; mayDuplicate: boolean; isArchived: boolean };
+
+export function Banners({ onOpen, mayDuplicate, isArchived }: Props) {
   return (
     <>
       <RestoredBanner />
       <ConflictBanner onOpen={onOpen} />
-      <RoleBanner mayDuplicate={mayDuplicate} />
+      <RoleBanner mayDuplicate={mayDuplicate} isArchived={isArchived} />
     </>
   );
 }
@@ -77,7 +79,7 @@ function ConflictBanner({ onOpen }: { onOpen: (dialog: Opened) => void }) {
   );
 }
 
-function RoleBanner({ mayDuplicate }: { mayDuplicate: boolean }) {
+function RoleBanner({ mayDuplicate, isArchived }: Omit<Props, "onOpen">) {
   const duplicate = useDuplicate();
   const mode = useScenario((state) => state.mode);
   const hasId = useScenario((state) => state.scenarioId !== null);
@@ -87,7 +89,10 @@ function RoleBanner({ mayDuplicate }: { mayDuplicate: boolean }) {
   }
   return (
     <p className={styles.banner}>
-      <span>Play with any value; saving here is not part of your role. A copy of your own can be saved.</span>
+      <span>
+        {isArchived ? "This scenario is archived: restore it in the list to save changes." : "Play with any value; saving here is not part of your role."}
+        {mayDuplicate && " A copy of your own can be saved."}
+      </span>
       <button type="button" className={controls.button} disabled={!mayDuplicate} onClick={() => void duplicate()}>
         Duplicate with my changes
       </button>

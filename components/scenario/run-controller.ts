@@ -12,6 +12,8 @@ const LONG_MS = 2000;
 const LIVE_PERIODS = 4000;
 const LIVE_MS = 24;
 
+type Kind = "full" | "coarse";
+
 export type RunController = { runNow: () => void; cancel: () => void; dispose: () => void };
 
 const periodCountOf = (document: ScenarioDocument): number => document.run.durationS * document.pwm.frequencyHz;
@@ -24,10 +26,13 @@ const periodCountOf = (document: ScenarioDocument): number => document.run.durat
 export function createRunController(store: ScenarioStore, client: EngineClient): RunController {
   let isDisposed = false;
   let restTimer: ReturnType<typeof setTimeout> | undefined;
-  let coarseFrame: number | undefined;
-  let isCoarseBusy = false;
+  let frame: number | undefined;
   let runId = 0;
+  let isBusy = false;
+  /** What to run next with the newest document, once the run under way has answered. */
+  let next: Kind | null = null;
 
+  /** Short enough to let it finish: a newer one that took its place at once would leave nothing to show while dragging. */
   const isLive = (document: ScenarioDocument): boolean => {
     const { run, shown } = store.getState();
     if (periodCountOf(document) <= LIVE_PERIODS) return true;
@@ -41,42 +46,42 @@ export function createRunController(store: ScenarioStore, client: EngineClient):
     return { document, overviewColumnCount: COLUMNS.overview, ...(isUsable ? { view: { fromS: viewWindow.fromS, toS, columnCount } } : {}) };
   };
 
-  const runCoarse = async () => {
-    coarseFrame = undefined;
-    const document = store.getState().goodDocument;
-    isCoarseBusy = true;
-    const outcome = await client.run(request(document, COLUMNS.coarse));
-    isCoarseBusy = false;
-    if (isDisposed) return;
-    const state = store.getState();
-    // after the drag the full run is on its way and must not be overwritten by what was asked before it
-    if (outcome.ok && state.gesture) state.runEnded(outcome.value, document, true);
-    else if (!outcome.ok && state.gesture) state.runStopped(outcome.failure);
-    if (state.gesture && state.goodDocument !== document) followDrag();
-  };
-  const followDrag = () => {
-    if (isCoarseBusy || coarseFrame !== undefined) return;
-    coarseFrame = requestAnimationFrame(() => void runCoarse());
-  };
-
-  const runFull = async () => {
-    clearTimeout(restTimer);
-    restTimer = undefined;
+  const start = async (kind: Kind) => {
     const id = ++runId;
     const isNewest = () => !isDisposed && id === runId;
     const { goodDocument: document, runStarted } = store.getState();
-    runStarted();
-    const slow = setTimeout(() => isNewest() && store.getState().runBecame("isSlow"), SLOW_MS);
-    const long = setTimeout(() => isNewest() && store.getState().runBecame("isLong"), LONG_MS);
     const isFirst = store.getState().shown === null;
-    const outcome = await client.run(request(document, COLUMNS.full), (progress) => isNewest() && store.getState().runProgressed(progress));
-    clearTimeout(slow);
-    clearTimeout(long);
+    const say = (what: "isSlow" | "isLong") => isNewest() && kind === "full" && store.getState().runBecame(what);
+    const timers = [setTimeout(() => say("isSlow"), SLOW_MS), setTimeout(() => say("isLong"), LONG_MS)];
+    isBusy = true;
+    next = null;
+    if (kind === "full") runStarted();
+    const outcome = await client.run(request(document, COLUMNS[kind]), (progress) => isNewest() && kind === "full" && store.getState().runProgressed(progress));
+    timers.forEach(clearTimeout);
     if (!isNewest()) return;
-    if (!outcome.ok) return store.getState().runStopped(outcome.failure);
-    store.getState().runEnded(outcome.value, document, false);
+    isBusy = false;
+    if (outcome.ok) store.getState().runEnded(outcome.value, document, kind === "coarse");
+    else store.getState().runStopped(outcome.failure);
+    if (next !== null) return void start(next);
+    if (!outcome.ok) return;
     if (isFirst || !coversWindow()) views.ask();
     readings.ask();
+  };
+  const ask = (kind: Kind) => {
+    if (isDisposed) return;
+    if (isBusy && isLive(store.getState().goodDocument)) next = kind === "full" || next === "full" ? "full" : "coarse";
+    else void start(kind);
+  };
+  const askAfter = (waitMs: number) => {
+    clearTimeout(restTimer);
+    restTimer = setTimeout(() => ask("full"), waitMs);
+  };
+  const followDrag = () => {
+    frame ??= requestAnimationFrame(() => {
+      frame = undefined;
+      // the drag may have ended within the frame: its full run is on its way
+      if (store.getState().gesture) ask("coarse");
+    });
   };
 
   const coversWindow = (): boolean => {
@@ -101,27 +106,25 @@ export function createRunController(store: ScenarioStore, client: EngineClient):
 
   const unsubscribe = store.subscribe((state, before) => {
     if (state.goodDocument !== before.goodDocument) {
-      clearTimeout(restTimer);
-      if (state.gesture) {
-        if (isLive(state.goodDocument)) followDrag();
-        restTimer = setTimeout(() => void runFull(), REST_MS);
-      } else restTimer = setTimeout(() => void runFull(), isLive(state.goodDocument) ? 0 : REST_MS);
-    } else if (before.gesture && !state.gesture && state.shown?.isCoarse) {
-      clearTimeout(restTimer);
-      restTimer = setTimeout(() => void runFull(), REST_MS);
-    }
+      const isFollowed = isLive(state.goodDocument);
+      if (state.gesture && isFollowed) followDrag();
+      askAfter(state.gesture || !isFollowed ? REST_MS : 0);
+    } else if (before.gesture && !state.gesture && state.shown?.isCoarse) askAfter(0);
     if (state.viewWindow !== before.viewWindow) views.ask();
     if (state.cursorS !== before.cursorS) readings.ask();
   });
-  void runFull();
+  ask("full");
 
   return {
-    runNow: () => void runFull(),
-    cancel: () => client.cancel(),
+    runNow: () => void start("full"),
+    cancel: () => {
+      next = null;
+      client.cancel();
+    },
     dispose: () => {
       isDisposed = true;
       clearTimeout(restTimer);
-      if (coarseFrame !== undefined) cancelAnimationFrame(coarseFrame);
+      if (frame !== undefined) cancelAnimationFrame(frame);
       unsubscribe();
       client.dispose();
     },

@@ -5,6 +5,7 @@ import { Bridge } from "@/components/bridge/bridge";
 import { ReadingStrip } from "@/components/bridge/reading-strip";
 import { bandAt } from "@/components/plot/bands";
 import { EventsTable } from "@/components/plot/events";
+import type { LaneId } from "@/components/plot/lanes";
 import { RunOverview } from "@/components/plot/overview";
 import { RunPlot } from "@/components/plot/run-plot";
 import { StepBar } from "@/components/plot/step-bar";
@@ -106,7 +107,9 @@ function useIsStale(): boolean {
   return useScenario((state) => (state.run.phase === "recomputing" && state.run.isSlow) || state.run.phase === "failed" || state.run.phase === "stale");
 }
 
-export function Lanes({ shown, heightPx, onTogglePlay }: Part & { heightPx?: number; onTogglePlay?: () => void }) {
+type LanesProps = Part & { lanes?: readonly LaneId[]; heightPx?: number; onTogglePlay?: () => void };
+
+export function Lanes({ shown, lanes, heightPx, onTogglePlay }: LanesProps) {
   const { store } = useWorkbench();
   const cursorS = useScenario((state) => state.cursorS);
   const viewWindow = useScenario((state) => state.viewWindow);
@@ -132,6 +135,7 @@ export function Lanes({ shown, heightPx, onTogglePlay }: Part & { heightPx?: num
       areLettersOn={areLettersOn}
       isHeld={isHeld}
       isStale={useIsStale()}
+      lanes={lanes}
       heightPx={heightPx}
       onTogglePlay={onTogglePlay}
     />

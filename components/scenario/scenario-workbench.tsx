@@ -26,6 +26,7 @@ export type ScenarioWorkbenchProps = {
   state?: ScenarioView["state"] | null;
   actions?: Partial<ScenarioActions>;
   mayDuplicate?: boolean;
+  isArchived?: boolean;
   /** The button that shares; the page knows how. */
   share?: ReactNode;
   createClient?: () => EngineClient;
@@ -41,7 +42,9 @@ export function ScenarioWorkbench({ initial, actions, createClient = createEngin
   );
 }
 
-function Workbench({ state = null, mayDuplicate = false, share }: Pick<ScenarioWorkbenchProps, "state" | "mayDuplicate" | "share">) {
+type WorkbenchProps = Pick<ScenarioWorkbenchProps, "state" | "mayDuplicate" | "isArchived" | "share">;
+
+function Workbench({ state = null, mayDuplicate = false, isArchived = false, share }: WorkbenchProps) {
   const [opened, setOpened] = useState<Opened | null>(null);
   const root = useRef<HTMLDivElement>(null);
   const layout = useLayout();
@@ -51,7 +54,7 @@ function Workbench({ state = null, mayDuplicate = false, share }: Pick<ScenarioW
       <WorkbenchHead state={state} onOpen={setOpened} mayDuplicate={mayDuplicate} share={share} />
       <ProgressBorder />
       <div className={styles.banners}>
-        <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} />
+        <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} isArchived={isArchived} />
       </div>
       {layout === "phone" ? <PhoneLayout /> : <DeskLayout isNarrow={layout === "narrow"} />}
       {layout !== "phone" && <WorkbenchFoot />}

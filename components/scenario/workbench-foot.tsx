@@ -55,7 +55,7 @@ function Legend() {
       <span>Colour is the direction of the motor current:</span>
       <span className={styles.sign}>
         <svg width="22" height="10" viewBox="0 0 22 10" aria-hidden="true">
-          <path d="M1 5H20M15.5 1 20.5 5 15.5 9M5 1.5 1 5 5 8.5M9 1.5 5 5 9 8.5" fill="none" stroke="var(--fwd)" strokeWidth="1.5" />
+          <path d="M4 5H20M15.5 1 20.5 5 15.5 9M1 1 4.5 5 1 9M5.5 1 9 5 5.5 9" fill="none" stroke="var(--fwd)" strokeWidth="1.5" />
         </svg>
         forward
       </span>

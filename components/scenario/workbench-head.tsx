@@ -102,7 +102,8 @@ function SaveButton({ onOpen }: { onOpen: (dialog: Opened) => void }) {
   }
   return (
     <button type="button" className={primary} disabled={changeCount === 0} onClick={() => onOpen(hasConflict ? "conflict" : "save")}>
-      {hasConflict ? "Compare" : "Save revision"}
+      {hasConflict ? "Compare" : "Save"}
+      {!hasConflict && <span className={styles.longWord}>revision</span>}
     </button>
   );
 }
