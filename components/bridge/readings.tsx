@@ -91,7 +91,7 @@ function NameInLoop({ geometry: g, facts, size }: { geometry: BridgeGeometry; fa
   );
 }
 
-/** The gauge of what the converter reads, inside the lower loop: one staff, or one a leg for single-ended outputs. */
+/** The gauge of what the converter reads, inside the lower loop. */
 export function OutputGauge({ geometry: g, reading, facts, textSize, idealV }: Props & { idealV: number | null }) {
   const xm = (g.xA + g.xB) / 2;
   const y = g.yMid + 20;
@@ -103,24 +103,22 @@ export function OutputGauge({ geometry: g, reading, facts, textSize, idealV }: P
   const span = { minV: isPair ? -facts.outputMaxV : Math.min(0, facts.outputMinV), maxV: facts.outputMaxV };
   const baseV = facts.readingTrace === "combinedV" ? (facts.referenceV ?? 0) : 0;
   const fill = isForward ? "var(--fwd-fill)" : "var(--rev-fill)";
-  const name = facts.readingTrace === "combinedV" ? (facts.isLegSite ? "Combined" : "Output") : isPair ? "Difference" : facts.isLegSite ? "Outputs A, B" : "Output";
-  const word = limitWord(value, facts);
+  const name = facts.readingTrace === "combinedV" ? (facts.isLegSite ? "Combined" : "Output") : isPair ? "Difference" : "Output";
+  const word = isPair ? "" : limitWord(value, facts);
   const gapV = idealV === null ? 0 : Math.abs(idealV - value);
   const isWrong = gapV > facts.sampleLimitA * facts.gainRatio * facts.shuntOhm;
   const small = textSize(11);
   const x = xm - 58;
-  const isTwo = facts.readingTrace === "outAV" && reading.outBV !== null;
   const top = g.yMid + g.motorRadius + 3 + small;
   return (
     <g>
       <Gauge x={x} y={y} width={15} height={height} {...span} valueV={value} baseV={baseV} fill={fill} hasMidscale={facts.readingTrace === "combinedV"} />
-      {isTwo && <Gauge x={x + 30} y={y + 34} width={15} height={height - 34} {...span} valueV={reading.outBV ?? 0} baseV={baseV} fill={fill} hasMidscale={false} />}
-      <g transform={`translate(${isTwo ? 28 : 0} 0)`}>
+      <g>
         <text x={x + 34} y={top} className={styles.caps} fontSize={textSize(10.5)}>
           {name}
         </text>
-        <text x={x + 34} y={top + 20} className={styles.numeral} fontSize={isTwo ? 16 : 19}>
-          {isTwo ? `${fixed(value, 2)}, ${fixed(reading.outBV ?? 0, 2)}` : fixed(value, 3, isPair)}
+        <text x={x + 34} y={top + 20} className={styles.numeral} fontSize={19}>
+          {fixed(value, 3, isPair)}
           <tspan className={styles.unit} fontSize={11} dx="2">
             V
           </tspan>

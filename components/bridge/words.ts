@@ -73,7 +73,7 @@ export function describeState(reading: InstantReading, facts: SensingFacts, full
   const who = whoOf(reading, conduction, flow);
   const supply = supplyWord(reading);
   const direction = directionWord(reading.motorCurrentA, fullScaleA * 0.005);
-  const motor = direction === "none" ? "Motor current is near zero" : `Motor ${fixed(Math.abs(reading.motorCurrentA), 2)} A ${direction}`;
+  const motor = direction === "none" ? `${facts.loadName} current is near zero` : `${facts.loadName} ${fixed(Math.abs(reading.motorCurrentA), 2)} A ${direction}`;
   const detail = conduction === "recirculateLow" ? ", low side" : conduction === "recirculateHigh" ? ", high side" : "";
   const shunts = shuntWords(reading, facts).map((shunt) => `${shunt.name} ${shunt.across} across, ${shunt.flow}${shunt.output === null ? "" : `, ${shunt.outputName} ${shunt.output}${shunt.limit === "" ? "" : ` ${shunt.limit}`}`}`);
   const supplyText = supply === "idle" ? "The supply is idle" : `The supply ${supply} ${fixed(Math.abs(reading.bridgeA), 2)} A`;

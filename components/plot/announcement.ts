@@ -10,7 +10,7 @@ export function announcement(cursorS: number, facts: CursorFacts, sensing: Sensi
   const sample = facts.sample;
   const isOnSample = sample !== null && Math.abs(sample.conversion.timeS - cursorS) <= sensing.periodS * 1e-6;
   if (isOnSample) parts.push(`sample ${sample.number}`);
-  if (motorA !== null) parts.push(`motor ${fixed(motorA, 2, true)} A`);
+  if (motorA !== null) parts.push(`${sensing.loadName.toLowerCase()} ${fixed(motorA, 2, true)} A`);
   if (readingV !== null) parts.push(`${READING_WORD[sensing.readingTrace] ?? "output"} ${fixed(readingV, 3)} V`);
   if (isOnSample) {
     const errorA = sample.conversion.reconstructedA - sample.conversion.trueA;

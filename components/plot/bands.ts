@@ -55,12 +55,12 @@ export function bandAt(bands: readonly Band[], timeS: number): Band | null {
 export const bandsIn = (bands: readonly Band[], window: PlotWindow): Band[] =>
   bands.filter((band) => band.toS > window.fromS && band.fromS < window.toS);
 
-/** Neighbours of the same conduction as one, so that a change of a leg alone draws no seam. */
+/** Neighbours of the same conduction as one, so that a change of a leg alone draws no seam. Bands follow one another without gaps. */
 export function mergeBands(bands: readonly Band[]): { fromS: number; toS: number; conduction: Conduction }[] {
   const merged: { fromS: number; toS: number; conduction: Conduction }[] = [];
   for (const band of bands) {
     const last = merged[merged.length - 1];
-    if (last !== undefined && last.conduction === band.conduction && last.toS === band.fromS) last.toS = band.toS;
+    if (last !== undefined && last.conduction === band.conduction) last.toS = band.toS;
     else merged.push({ fromS: band.fromS, toS: band.toS, conduction: band.conduction });
   }
   return merged;

@@ -108,12 +108,12 @@ type GateKey = (typeof GATES)[number]["key"];
 /** Neighbouring bands in which a switch stays on, as one stretch. */
 export function onStretches(bands: readonly Band[], key: GateKey): { fromS: number; toS: number }[] {
   const stretches: { fromS: number; toS: number }[] = [];
-  for (const band of bands) {
-    if (!band.gates[key]) continue;
+  bands.forEach((band, index) => {
+    if (!band.gates[key]) return;
     const last = stretches[stretches.length - 1];
-    if (last !== undefined && last.toS === band.fromS) last.toS = band.toS;
+    if (last !== undefined && bands[index - 1]?.gates[key]) last.toS = band.toS;
     else stretches.push({ fromS: band.fromS, toS: band.toS });
-  }
+  });
   return stretches;
 }
 

@@ -2,8 +2,9 @@ import type { Conversion } from "@/lib/engine/results";
 import { decimate } from "./decimate";
 import type { PlacedLane } from "./layout";
 import { cross, diamond, type Painter } from "./painter";
-import { xOf, yOf } from "./scale";
+import { clamp, xOf, yOf } from "./scale";
 import type { Scene } from "./scene";
+import { fixed } from "./ticks";
 import { valueAt } from "./values";
 
 /** A gap smaller than this between the reading and what it should be is the filter's lag, not something worth red ink. */
@@ -68,7 +69,7 @@ export function drawReconstructed(painter: Painter, scene: Scene, lane: PlacedLa
   const isSparse = gapPx(scene, samples.length) >= LEAST_MARK_GAP_PX;
   for (const sample of samples) {
     const x = xOf(scene.scale, sample.timeS);
-    const y = yOf(lane.scale, sample.reconstructedA);
+    const y = clamp(yOf(lane.scale, sample.reconstructedA), lane.y, lane.y + lane.height);
     if (isMiss(sample, scene.facts.sampleLimitA)) {
       painter.polyline([x, y, x, yOf(lane.scale, sample.trueA)], { color: "fault", width: 1.4, dash: [3, 2] });
       cross(painter, x, y, isSparse ? 4 : 2.5);
@@ -94,7 +95,7 @@ export function drawSamples(painter: Painter, scene: Scene, lane: PlacedLane): v
     else if (isSparse) diamond(painter, x, y, 4.2);
     if (scene.layout.isCompact || index % stride !== 0) return;
     painter.polyline([x, bottom, x, bottom + 4], { color: "ink", width: 1 });
-    painter.text(x, bottom + 15, String(sample.code), { size: 10.5, color: isBad ? "fault" : "ink3", weight: isBad ? 700 : 400, anchor: "middle" });
+    painter.text(x, bottom + 15, fixed(sample.code, 0), { size: 10.5, color: isBad ? "fault" : "ink3", weight: isBad ? 700 : 400, anchor: "middle" });
   });
 }
 

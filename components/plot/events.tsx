@@ -71,7 +71,7 @@ export function EventsTable({ view, overview, simulation, document, cursorS, onC
       </div>
       <div className={styles.grid} style={{ "--time-col": `${timeColumnPx}px` } as CSSProperties} role="table" aria-label="Events of the run" aria-rowcount={rows.length + 1}>
         <div role="rowgroup" className={styles.titles}>
-          <Titles unit={format.unit} output={OUTPUT_HEADS[sensing.readingTrace] ?? "Output"} />
+          <Titles unit={format.unit} load={sensing.loadName} output={OUTPUT_HEADS[sensing.readingTrace] ?? "Output"} />
         </div>
         <div
           ref={scrollerRef}
@@ -84,8 +84,8 @@ export function EventsTable({ view, overview, simulation, document, cursorS, onC
         >
           {rows.length === 0 && <p className={styles.empty}>Nothing switches in this run.</p>}
           <div style={{ height: rows.length * ROW_PX }} role="presentation" />
-          {rows.slice(first, last).map((row, offset) => {
-            const index = first + offset;
+          {indicesShown(first, last, current).map((index) => {
+            const row = rows[index]!;
             return (
               <div
                 key={row.timeS}
@@ -116,9 +116,16 @@ export function EventsTable({ view, overview, simulation, document, cursorS, onC
   );
 }
 
+/** Rows in sight, and the current one wherever it is, so that it can always be found. */
+function indicesShown(first: number, last: number, current: number): number[] {
+  const indices = Array.from({ length: Math.max(0, last - first) }, (_, offset) => first + offset);
+  if (current < 0 || (current >= first && current < last)) return indices;
+  return current < first ? [current, ...indices] : [...indices, current];
+}
+
 const exactly = (view: View, name: Parameters<typeof valueAt>[1], timeS: number): number | null => (view.kind === "exact" ? valueAt(view, name, timeS) : null);
 
-function Titles({ unit, output }: { unit: string; output: string }) {
+function Titles({ unit, load, output }: { unit: string; load: string; output: string }) {
   return (
     <div role="row" aria-rowindex={1} className={styles.row}>
       <span role="columnheader" className={styles.number}>
@@ -128,7 +135,7 @@ function Titles({ unit, output }: { unit: string; output: string }) {
         Event
       </span>
       <span role="columnheader" className={styles.number}>
-        Motor <span className={styles.u}>A</span>
+        {load} <span className={styles.u}>A</span>
       </span>
       <span role="columnheader" className={styles.number}>
         {output} <span className={styles.u}>V</span>

@@ -79,7 +79,7 @@ export function allLanes(facts: SensingFacts): Lane[] {
   return [
     { ...plain, id: "conduction", kind: "strip", label: "Conduction", unit: "", traces: [], base: null, nominalPx: 15 },
     { ...plain, id: "gates", kind: "gates", label: "Gates", unit: "", traces: [], base: null, nominalPx: 44 },
-    { ...plain, id: "motor", kind: "signed", label: "Motor", sublabel: "current", unit: "A", traces: [line("motorCurrentA")], nominalPx: 94 },
+    { ...plain, id: "motor", kind: "signed", label: facts.loadName, sublabel: "current", unit: "A", traces: [line("motorCurrentA")], nominalPx: 94 },
     { ...plain, id: "speed", kind: "signed", label: "Speed", sublabel: "of the shaft", unit: "rad/s", traces: [line("speedRadPerS")] },
     { ...plain, id: "bus", label: "Bus", sublabel: "voltage", unit: "V", traces: [line("busV")], base: null },
     { ...plain, id: "terminals", label: "Terminals", unit: "V", traces: [line("terminalAV", "A"), line("terminalBV", "B", true)] },

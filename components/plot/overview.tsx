@@ -83,7 +83,7 @@ export function placeLabels(milestones: readonly Milestone[], scale: TimeScale):
   let freeFrom = 0;
   return milestones.map((mark) => {
     const x = xOf(scale, mark.timeS);
-    const width = mark.label.length * LABEL_CHAR_PX + 4;
+    const width = Math.max(26, mark.label.length * LABEL_CHAR_PX + 4);
     const labelX = clamp(x - 2, 0, Math.max(0, scale.x1 + 6 - width));
     const isLabelled = labelX >= freeFrom;
     if (isLabelled) freeFrom = labelX + width + 6;

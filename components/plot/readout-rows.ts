@@ -22,7 +22,9 @@ export type CursorFacts = {
 export function laneNumber(lane: { scale: { min: number; max: number }; unit: string }, isSigned: boolean): (value: number | null) => string {
   const largest = Math.max(Math.abs(lane.scale.min), Math.abs(lane.scale.max));
   const { factor, unit } = unitScale(largest, lane.unit);
-  const decimals = lane.unit === "V" && factor === 1 && largest < 20 ? 3 : Math.max(0, Math.min(3, 2 - Math.floor(Math.log10(Math.max(largest / factor, 1e-9)))));
+  const digits = Math.max(0, Math.min(3, 2 - Math.floor(Math.log10(Math.max(largest / factor, 1e-9)))));
+  const least = factor !== 1 ? 0 : lane.unit === "V" && largest < 20 ? 3 : lane.unit === "A" ? 2 : 0;
+  const decimals = Math.max(digits, least);
   return (value) => (value === null ? "–" : `${fixed(value / factor, decimals, isSigned)} ${unit}`);
 }
 
@@ -78,8 +80,8 @@ function readingRows(lane: PlacedLane, facts: CursorFacts, sensing: SensingFacts
   const isWrong = idealV !== null && value !== null && Math.abs(idealV - value) > sensing.sampleLimitA * sensing.gainRatio * sensing.shuntOhm;
   const rows: ReadoutRow[] = [{ label: lane.label.toLowerCase(), text: write(value), isFault: isWrong }];
   if (idealV !== null) rows.push({ label: "should read", text: write(idealV) });
-  if (facts.sample !== null) rows.push({ label: "ADC code", text: String(facts.sample.conversion.code) });
-  return lane.id === "outputs" && sensing.isLegSite ? [...outputRows(lane, facts, sensing).slice(0, 2), ...rows.slice(1)] : rows;
+  if (facts.sample !== null) rows.push({ label: "ADC code", text: fixed(facts.sample.conversion.code, 0) });
+  return rows;
 }
 
 /** Rows of one lane at the cursor. */

@@ -58,6 +58,8 @@ export type RunPlotProps = {
   onTogglePlay?: (() => void) | undefined;
 };
 
+/** Lanes that do not fit scroll; a keyboard must then reach the scroller. */
+const SCROLLING = { tabIndex: 0, role: "group", "aria-label": "Lanes; up and down scroll" };
 const COMPACT_BELOW_PX = 560;
 const HELP = "Arrow keys step by event, with Shift by PWM period, with Ctrl they move the window. Enter goes into the lanes, Escape leaves them.";
 
@@ -137,7 +139,7 @@ export function RunPlot(props: RunPlotProps) {
         {HELP}
       </p>
       <PlotControls onCommand={command} hasPin={pinS !== null} lanes={available} shown={shown} onShown={props.onLanes ?? setOwnLanes} tableId={`${helpId}-table`} isTableOpen={isTableOpen} onTable={setTableOpen} isCompact={isCompact} />
-      <div ref={fieldRef} className={styles.field} style={props.heightPx === undefined ? undefined : { height: props.heightPx, flex: "none" }}>
+      <div ref={fieldRef} className={styles.field} {...(layout.height > size.height + 1 && props.heightPx === undefined ? SCROLLING : {})} style={props.heightPx === undefined ? undefined : { height: props.heightPx, flex: "none" }}>
         <div className={styles.stage} style={{ width: layout.width, height: layout.height }}>
           <StaticLayer width={layout.width} height={layout.height} theme={theme} className={styles.canvas} draw={draw} />
           <LaneFrames layout={layout} facts={facts} sensing={sensing} borderLabel={borderLabel(scene)} areStops={isInside} containerRef={framesRef} onReadLane={setSaid} />

@@ -19,10 +19,13 @@ export const clamp = (value: number, low: number, high: number): number => Math.
 /** No window is shorter than this share of a PWM period: below it the solver's own event tolerance would show. */
 const SHORTEST_SHARE_OF_PERIOD = 1e-3;
 
+/** The sum may round to just past the run's end, where no view can be asked for. */
+const endOf = (fromS: number, lengthS: number, durationS: number): number => Math.min(durationS, fromS + lengthS);
+
 export function fitWindow(window: PlotWindow, durationS: number, periodS: number): PlotWindow {
   const lengthS = clamp(window.toS - window.fromS, Math.min(durationS, periodS * SHORTEST_SHARE_OF_PERIOD), durationS);
   const fromS = clamp(window.fromS, 0, durationS - lengthS);
-  return { fromS, toS: fromS + lengthS };
+  return { fromS, toS: endOf(fromS, lengthS, durationS) };
 }
 
 /** Zooms so that `aboutS` keeps its place on screen. `factor` below 1 shows less time. */
@@ -37,7 +40,7 @@ export function zoomWindow(window: PlotWindow, factor: number, aboutS: number, d
 export function panWindow(window: PlotWindow, byS: number, durationS: number): PlotWindow {
   const lengthS = window.toS - window.fromS;
   const fromS = clamp(window.fromS + byS, 0, Math.max(0, durationS - lengthS));
-  return { fromS, toS: fromS + lengthS };
+  return { fromS, toS: endOf(fromS, lengthS, durationS) };
 }
 
 /** Moves the window only as far as it takes to show `timeS`, with a margin of 8 % so that the cursor never sits on the edge. */

@@ -11,6 +11,8 @@ export type SensingFacts = {
   differenceLabel: string;
   arrangement: ScenarioDocument["sensing"]["amplifier"]["arrangement"];
   shuntOhm: number;
+  /** "Motor", or "Load" where there is none. */
+  loadName: string;
   gainRatio: number;
   referenceV: number | null;
   outputMinV: number;
@@ -33,9 +35,10 @@ const SAME_INSTANT_SHARE = 1e-9;
 
 type Sensing = ScenarioDocument["sensing"];
 
-function readingTraceOf(sensing: Sensing): TraceName {
-  if (sensing.amplifier.arrangement === "combinedMidscale" || sensing.amplifier.arrangement === "bipolarMidscale") return "combinedV";
-  return sensing.amplifier.arrangement === "differencePair" ? "differenceV" : "outAV";
+/** Two single-ended outputs of a pair of legs are read together: their codes are subtracted, so the reading is their difference. */
+function readingTraceOf({ site, amplifier }: Sensing): TraceName {
+  if (amplifier.arrangement === "combinedMidscale" || amplifier.arrangement === "bipolarMidscale") return "combinedV";
+  return site === "legTop" || site === "legBottom" ? "differenceV" : "outAV";
 }
 
 export const gainOf = (gain: Sensing["amplifier"]["gain"]): number => ("fixed" in gain ? gain.fixed : gain.outOhm / gain.inOhm);
@@ -54,6 +57,7 @@ export function readSensing(document: ScenarioDocument): SensingFacts {
     isLegSite: sensing.site === "legTop" || sensing.site === "legBottom",
     differenceLabel: sensing.site === "legBottom" ? "B − A" : "A − B",
     arrangement: sensing.amplifier.arrangement,
+    loadName: document.load.kind === "motor" ? "Motor" : "Load",
     shuntOhm: sensing.shunt.resistanceOhm,
     gainRatio: gainOf(amplifier.gain),
     referenceV,

@@ -15,27 +15,32 @@ export function roundStep(span: number, count: number): number {
 export function niceTicks(min: number, max: number, count: number): number[] {
   if (!(max > min)) return [min];
   const step = roundStep(max - min, count);
-  const slack = step * 1e-9;
-  const ticks: number[] = [];
-  for (let index = Math.ceil((min - slack) / step); index * step <= max + slack; index += 1) {
-    ticks.push(index === 0 ? 0 : Number((index * step).toPrecision(12)));
-  }
-  return ticks;
+  return multiplesIn(step, min, max);
 }
 
 const LEAST_TICK_PX = 14;
+const MOST_LANE_TICKS = 5;
+const LANE_STEPS = [1, 2, 2.5, 5, 10, 20, 25, 50, 100];
 
-/** Ticks of a lane: the smallest of the steps 1, 2, 2.5, 5 times a power of ten that leaves 14 px between two of them. */
+/** Ticks of a lane: the smallest of the steps 1, 2, 2.5, 5 times a power of ten that leaves 14 px between two of them and at most five. */
 export function laneTicks(min: number, max: number, heightPx: number): number[] {
   const leastStep = ((max - min) * LEAST_TICK_PX) / Math.max(1, heightPx);
   if (!(leastStep > 0)) return [min];
   const power = 10 ** Math.floor(Math.log10(leastStep));
-  const head = [1, 2, 2.5, 5, 10].find((step) => step * power >= leastStep * (1 - 1e-9)) ?? 10;
-  const step = head * power;
-  const ticks: number[] = [];
-  for (let index = Math.ceil(min / step - 1e-9); index * step <= max + step * 1e-9; index += 1) ticks.push(index === 0 ? 0 : Number((index * step).toPrecision(12)));
-  const tooMany = ticks.length > 5 ? ticks.filter((tick) => Math.abs(Math.round(tick / step) % 2) === 0) : ticks;
-  return tooMany.length > 0 ? tooMany : [min];
+  let ticks: number[] = [];
+  for (const head of LANE_STEPS) {
+    const step = head * power;
+    if (step < leastStep * (1 - 1e-9)) continue;
+    ticks = multiplesIn(step, min, max);
+    if (ticks.length <= MOST_LANE_TICKS) break;
+  }
+  return ticks;
+}
+
+function multiplesIn(step: number, min: number, max: number): number[] {
+  const multiples: number[] = [];
+  for (let index = Math.ceil(min / step - 1e-9); index * step <= max + step * 1e-9; index += 1) multiples.push(index === 0 ? 0 : Number((index * step).toPrecision(12)));
+  return multiples;
 }
 
 export type Domain = { min: number; max: number };
