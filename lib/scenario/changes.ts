@@ -2,7 +2,7 @@ import { diffDocuments, type Difference } from "./diff";
 import { GAIN_KIND_PATH } from "./inputs";
 import { mended } from "./mends";
 import { getAt, setAt } from "./paths";
-import { gainOf, type FaultKind, type Load, type ScenarioDocument } from "./schema";
+import { gainOf, type FaultKind, type Load, type ScenarioDocument, type ShaftEntry } from "./schema";
 import { isPart, ROWS_MAX, startOfFault, startOfLoad, startOfPart, startOfRow, type ListPath } from "./starts";
 
 /** Edits of a document as a person makes them. All are pure; the document given is not changed. */
@@ -27,7 +27,26 @@ function withGainKind(document: ScenarioDocument, kind: unknown): ScenarioDocume
   return setAt(document, "sensing.amplifier.gain", { inOhm, outOhm: Math.min(1e7, Math.max(1, outOhm)) });
 }
 
-/** Which command points and the like a change of load, fault kind or part replaces as a whole. */
+/** Power of speed with which a shaft load grows, by its kind. */
+const SPEED_POWERS: Readonly<Record<ShaftEntry["kind"], number>> = {
+  none: 0,
+  constant: 0,
+  active: 0,
+  viscous: 1,
+  fan: 2,
+};
+
+/** Another kind of shaft load with about the torque that it had: 0.2 N·m of friction is no 0.2 N·m·s²/rad² of fan. */
+function withShaftKind(document: ScenarioDocument, index: number, kind: ShaftEntry["kind"]): ScenarioDocument {
+  const entry = document.load.kind === "motor" ? document.load.shaft[index] : undefined;
+  if (!entry) return document;
+  const speed = Math.max(10, Math.abs(document.initial.speedRadPerS));
+  const torqueNm = Math.abs(entry.value) * speed ** SPEED_POWERS[entry.kind] || 0.1;
+  const value = kind === "none" ? 0 : Number((torqueNm / speed ** SPEED_POWERS[kind]).toPrecision(3));
+  return setAt(document, `load.shaft.${index}`, { ...entry, kind, value });
+}
+
+/** The edit itself; a change of load, of a kind or of a part replaces more than the one field. */
 function changed(document: ScenarioDocument, path: string, value: unknown): ScenarioDocument {
   if (path === GAIN_KIND_PATH) return withGainKind(document, value);
   if (path === "load.kind")
@@ -42,13 +61,19 @@ function changed(document: ScenarioDocument, path: string, value: unknown): Scen
     const old = document.faults[Number(fault[1])];
     return old ? setAt(document, `faults.${fault[1]}`, startOfFault(value as FaultKind, old.atS, document)) : document;
   }
+  const shaft = /^load\.shaft\.(\d+)\.kind$/.exec(path);
+  if (shaft) return withShaftKind(document, Number(shaft[1]), value as ShaftEntry["kind"]);
   return setAt(document, path, value);
 }
 
 function settled(before: ScenarioDocument, after: ScenarioDocument, path: string): AppliedChange {
   const document = mended(after, path, before);
+  const row = /^(?:faults|load\.shaft)\.\d+(?=\.kind$)/.exec(path)?.[0];
   const isOwn = (other: string) =>
-    other === path || other.startsWith(`${path}.`) || (path === "load.kind" && other.startsWith("load."));
+    (row !== undefined && other.startsWith(`${row}.`)) ||
+    other === path ||
+    other.startsWith(`${path}.`) ||
+    (path === "load.kind" && other.startsWith("load."));
   return { document, alsoChanged: diffDocuments(after, document).filter((difference) => !isOwn(difference.path)) };
 }
 

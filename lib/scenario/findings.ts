@@ -122,7 +122,8 @@ function fromIssue(issue: Issue, root: unknown, base: PropertyKey[]): Finding[] 
   }
   if (issue.code === "invalid_value") return [choiceFinding(path, value, issue.values.map(String))];
   const expected = issue.code === "invalid_type" ? (EXPECTED[issue.expected] ?? issue.expected) : "an object";
-  if (value === undefined) return [{ path, code: "field.missing", text: `${nameOf(path)} is missing; ${expected} is expected.` }];
+  if (value === undefined)
+    return [{ path, code: "field.missing", text: `${nameOf(path)} is missing; ${expected} is expected.` }];
   if (issue.code === "too_big" || issue.code === "too_small") return [lengthFinding(path, value)];
   if (issue.code === "custom") {
     return [

@@ -50,7 +50,7 @@ const device = (side: string): Record<string, Range> => ({
 
 const SUPPLY_AND_BRIDGE: Record<string, Range> = {
   "supply.voltageV": { name: "Supply voltage", unit: "V", min: 0.1, max: 2000 },
-  "supply.resistanceOhm": { name: "Supply resistance", unit: "Ω", min: 0, max: 10, fallback: 0, floor: 1e-9 },
+  "supply.resistanceOhm": { name: "Supply resistance", unit: "Ω", min: 0, max: 10, fallback: 0, floor: 1e-6 },
   "supply.busCapacitanceF": { name: "Bus capacitance", unit: "F", min: 0, max: 1, fallback: 0, floor: 1e-12 },
   ...device("high"),
   ...device("low"),

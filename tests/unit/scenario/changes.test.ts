@@ -110,6 +110,13 @@ describe("choosing one thing changes what must go with it, and says so", () => {
     expect(open.faults[0]).toEqual({ kind: "shuntOpen", atS: 0.0035, leg: "A" });
     expect(changed("sensing.site", "return", open).document.faults[0]).toEqual({ kind: "shuntOpen", atS: 0.0035 });
   });
+  test("another kind of shaft load keeps about its torque", () => {
+    // 0.21 N·m at 120 rad/s: 1.46e-5 N·m·s² of a fan, 1.75e-3 N·m·s of viscous friction
+    const fan = changed("load.shaft.0.kind", "fan").document;
+    expect(getAt(fan, "load.shaft.0")).toEqual({ timeS: 0, kind: "fan", value: 1.46e-5 });
+    expect(getAt(changed("load.shaft.0.kind", "viscous", fan).document, "load.shaft.0.value")).toBe(1.75e-3);
+    expect(getAt(changed("load.shaft.0.kind", "none", fan).document, "load.shaft.0.value")).toBe(0);
+  });
   test("a window beyond a shorter run falls back to the usual one", () => {
     expect(changed("run.durationS", 0.002).document.run).toEqual({ durationS: 0.002 });
   });
