@@ -10,16 +10,17 @@ export const arbitraryFaults = (durationS: number, sensing: ScenarioDocument["se
   const legName = fc.constantFrom("A" as const, "B" as const);
   const sideName = fc.constantFrom("high" as const, "low" as const);
   const isLeg = sensing.site === "legTop" || sensing.site === "legBottom";
-  const leg = isLeg ? { leg: legName } : {};
+  /** A shunt's or channel's fault names its leg where there is one shunt in each. */
+  const onLeg = <F extends object>(fault: fc.Arbitrary<F>): fc.Arbitrary<F & { leg?: "A" | "B" }> => (isLeg ? fc.tuple(fault, legName).map(([given, leg]) => ({ ...given, leg })) : fault);
   const kind = <K extends Fault["kind"]>(name: K) => fc.constant(name);
   const any: fc.Arbitrary<Fault>[] = [
     fc.record({ kind: kind("openWinding"), atS }),
     fc.record({ kind: kind("switchStuckOpen"), atS, leg: legName, side: sideName }),
     fc.record({ kind: kind("switchShorted"), atS, leg: legName, side: sideName }),
-    fc.record({ kind: kind("shuntOpen"), atS, ...leg }),
-    fc.record({ kind: kind("shuntDrifted"), atS, ...leg, factor: quantity("faults.*.factor", spread(0.5, 2), wild) }),
-    fc.record({ kind: kind("amplifierOffsetShift"), atS, ...leg, deltaV: quantity("faults.*.deltaV", fc.constantFrom(0.001, -0.002), wild) }),
-    fc.record({ kind: kind("amplifierStuckOutput"), atS, ...leg, voltageV: quantity("faults.*.stuckV", fc.constantFrom(0, 1.1), wild) }),
+    onLeg(fc.record({ kind: kind("shuntOpen"), atS })),
+    onLeg(fc.record({ kind: kind("shuntDrifted"), atS, factor: quantity("faults.*.factor", spread(0.5, 2), wild) })),
+    onLeg(fc.record({ kind: kind("amplifierOffsetShift"), atS, deltaV: quantity("faults.*.deltaV", fc.constantFrom(0.001, -0.002), wild) })),
+    onLeg(fc.record({ kind: kind("amplifierStuckOutput"), atS, voltageV: quantity("faults.*.stuckV", fc.constantFrom(0, 1.1), wild) })),
     fc.record({ kind: kind("supplySag"), atS, voltageV: quantity("faults.*.sagV", spread(3, 30), wild) }),
   ];
   const motor: fc.Arbitrary<Fault>[] = [
