@@ -33,8 +33,8 @@ export function HeadroomBar() {
       <svg className={styles.bar} viewBox={`0 0 ${WIDTH} 18`} role="img" aria-label={`The output uses ${volt(low - bottomV)} above its floor to ${above} below its ceiling`}>
         <path d={`M0 9.5H${WIDTH}`} stroke="var(--ink)" />
         <path d={`M.5 4V15M${WIDTH - 0.5} 4V15`} stroke="var(--ink)" />
-        {low < restV && <rect x={x(low)} y="5" width={x(Math.min(restV, high)) - x(low)} height="9" fill="var(--rev-fill)" stroke="var(--rev)" />}
-        {high > restV && <rect x={x(Math.max(restV, low))} y="5" width={x(high) - x(Math.max(restV, low))} height="9" fill="var(--fwd-fill)" stroke="var(--fwd)" />}
+        {low < restV && <rect x={x(low)} y="5" width={x(restV) - x(low)} height="9" fill="var(--rev-fill)" stroke="var(--rev)" />}
+        {high > restV && <rect x={x(restV)} y="5" width={x(high) - x(restV)} height="9" fill="var(--fwd-fill)" stroke="var(--fwd)" />}
         {isTwoSided && <path d={`M${x(restV)} 1V18`} stroke="var(--ref)" strokeWidth="1.4" strokeDasharray="5 2 1.5 2" />}
       </svg>
       <span className={styles.ends}>

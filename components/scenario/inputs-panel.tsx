@@ -62,13 +62,14 @@ function changed(set: ReadonlySet<SectionId>, id: SectionId, isIn: boolean): Rea
   return next;
 }
 
-/** Focuses the field of a path, or the nearest one that holds it: the list for an entry, the section for a part. */
+/** Focuses the field of a path, else one inside it, else one beside it in the part that holds it. */
 function focusField(root: HTMLElement | null, path: string): void {
   if (!root) return;
   let at = path;
   while (at !== "") {
-    const row = root.querySelector(`[data-path="${CSS.escape(at)}"], [data-path^="${CSS.escape(at)}."]`);
-    const field = row?.querySelector<HTMLElement>("input, select");
+    const row = `:is([data-path="${CSS.escape(at)}"], [data-path^="${CSS.escape(at)}."])`;
+    // of a part with several fields the first number is what a notice means
+    const field = root.querySelector<HTMLElement>(`${row} input[type=text]`) ?? root.querySelector<HTMLElement>(`${row} :is(input, select)`);
     if (field) {
       field.scrollIntoView?.({ block: "center" });
       field.focus();

@@ -4,6 +4,7 @@ import type { ReactNode } from "react";
 import type { Notice, Severity } from "@/lib/engine/results";
 import { inputAt } from "@/lib/scenario/inputs";
 import { labelOf } from "@/lib/scenario/diff";
+import { nameOf } from "@/lib/scenario/names";
 import { formatQuantity } from "@/lib/units/format";
 import { useScenario, useWorkbench } from "./provider";
 import styles from "./notices.module.css";
@@ -69,7 +70,7 @@ export function NoticesPanel({ onGo }: { onGo?: (where: "run" | "inputs") => voi
 }
 
 const NONE: readonly Notice[] = [];
-const fieldWords = (path: string): string => inputAt(path)?.label.toLowerCase() ?? "the field";
+const fieldWords = (path: string): string => (inputAt(path)?.label ?? nameOf(path)).toLowerCase();
 
 function Links({ notice, onTime, onField }: { notice: Notice; onTime: (timeS: number) => void; onField: (path: string) => void }) {
   const { timeS, path } = notice;

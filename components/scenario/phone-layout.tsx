@@ -6,7 +6,6 @@ import { InputsPanel } from "./inputs-panel";
 import { NoticesPanel, SeverityGlyph } from "./notices-panel";
 import { useScenario } from "./provider";
 import { BridgeNow, Lanes, NoRunYet, Overview, Steps, StripNow } from "./run-region";
-import { RunWords } from "./workbench-foot";
 import styles from "./phone.module.css";
 
 const TABS = ["run", "inputs", "figures", "notices"] as const;
@@ -48,9 +47,6 @@ function RunSheet({ onNotices }: { onNotices: () => void }) {
   if (!shown) return null;
   return (
     <div className={styles.run}>
-      <div className={styles.words}>
-        <RunWords />
-      </div>
       <BridgeNow shown={shown} isPhone />
       <StripNow shown={shown} />
       {worst && (

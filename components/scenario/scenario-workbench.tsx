@@ -51,7 +51,7 @@ function Workbench({ state = null, mayDuplicate = false, isArchived = false, sha
   usePageKeys(root, opened, setOpened);
   return (
     <div ref={root} className={styles.workbench} data-layout={layout}>
-      <WorkbenchHead state={state} onOpen={setOpened} mayDuplicate={mayDuplicate} share={share} />
+      <WorkbenchHead state={state} onOpen={setOpened} mayDuplicate={mayDuplicate} share={share} isPhone={layout === "phone"} />
       <ProgressBorder />
       <div className={styles.banners}>
         <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} isArchived={isArchived} />

@@ -7,6 +7,7 @@ import { MoreMenu } from "./more-menu";
 import { useScenario, useWorkbench } from "./provider";
 import { savedWords } from "./saved-words";
 import { useNow } from "./use-now";
+import { RunWords } from "./workbench-foot";
 import type { Opened } from "./workbench-dialogs";
 import controls from "./controls.module.css";
 import styles from "./workbench.module.css";
@@ -14,10 +15,10 @@ import styles from "./workbench.module.css";
 type State = ScenarioView["state"];
 const STATE_WORDS: Record<State, string> = { draft: "Draft", inReview: "In review", approved: "Approved", superseded: "Superseded" };
 
-type Props = { state: State | null; onOpen: (dialog: Opened) => void; share?: ReactNode; mayDuplicate: boolean };
+type Props = { state: State | null; onOpen: (dialog: Opened) => void; share?: ReactNode; mayDuplicate: boolean; isPhone: boolean };
 
 /** Sub-head: title, state, what is saved and what is not, undo and redo, save. */
-export function WorkbenchHead({ state, onOpen, share, mayDuplicate }: Props) {
+export function WorkbenchHead({ state, onOpen, share, mayDuplicate, isPhone }: Props) {
   const title = useScenario((one) => one.title);
   const mode = useScenario((one) => one.mode);
   return (
@@ -32,6 +33,11 @@ export function WorkbenchHead({ state, onOpen, share, mayDuplicate }: Props) {
           </span>
         )}
         <SavedState />
+        {isPhone && (
+          <span className={styles.ran}>
+            <RunWords />
+          </span>
+        )}
       </div>
       <span className={styles.grow} />
       <UndoButtons />
@@ -101,9 +107,11 @@ function SaveButton({ onOpen }: { onOpen: (dialog: Opened) => void }) {
     );
   }
   return (
-    <button type="button" className={primary} disabled={changeCount === 0} onClick={() => onOpen(hasConflict ? "conflict" : "save")}>
-      {hasConflict ? "Compare" : "Save"}
-      {!hasConflict && <span className={styles.longWord}>revision</span>}
+    <button type="button" className={primary} aria-label={hasConflict ? "Compare" : "Save revision"} disabled={changeCount === 0} onClick={() => onOpen(hasConflict ? "conflict" : "save")}>
+      <span>
+        {hasConflict ? "Compare" : "Save"}
+        {!hasConflict && <span className={styles.longWord}> revision</span>}
+      </span>
     </button>
   );
 }
