@@ -8,8 +8,8 @@ import { useSize } from "@/components/plot/use-size";
 import { LoadSymbol, SupplyBox } from "./boxes";
 import { Channels } from "./channels";
 import { flowOf } from "./flow";
-import { PHONE, ribbonsOf, WIDE } from "./geometry";
-import { OutputGauge, ShuntNames, ShuntReadings } from "./readings";
+import { MEDIUM, PHONE, ribbonsOf, WIDE } from "./geometry";
+import { OutputGauge, ReadingColumn, ShuntNames, ShuntReadings } from "./readings";
 import { RibbonShape } from "./ribbon";
 import { ShuntStaff, staffPlaces } from "./staffs";
 import { Switches } from "./switches";
@@ -33,6 +33,8 @@ export type BridgeProps = {
 };
 
 const LEAST_TEXT_PX = 10.5;
+/** Below this the wide drawing's words would meet at their least size. */
+const MEDIUM_BELOW_PX = 480;
 
 const gatesOf = (reading: InstantReading): Gates => ({
   highA: reading.state.A === "high channel",
@@ -43,8 +45,9 @@ const gatesOf = (reading: InstantReading): Gates => ({
 
 export function Bridge({ reading, band = null, document, fullScaleA, idealV = null, isPhone = false, isStale = false }: BridgeProps) {
   const ref = useRef<HTMLDivElement>(null);
-  const geometry = isPhone ? PHONE : WIDE;
-  const size = useSize(ref, { width: geometry.width, height: geometry.height });
+  const size = useSize(ref, { width: WIDE.width, height: WIDE.height });
+  const isMedium = !isPhone && size.width < MEDIUM_BELOW_PX;
+  const geometry = isPhone ? PHONE : isMedium ? MEDIUM : WIDE;
   const facts = useMemo(() => readSensing(document), [document]);
   const words = describeState(reading, facts, fullScaleA, band);
   const direction = directionWord(reading.motorCurrentA, fullScaleA * 0.005);
@@ -65,8 +68,9 @@ export function Bridge({ reading, band = null, document, fullScaleA, idealV = nu
         {staffPlaces(geometry, facts.site).map((place) => (
           <ShuntStaff key={place.leg ?? "one"} place={place} />
         ))}
-        <ShuntNames geometry={geometry} facts={facts} textSize={textSize} />
-        {!isPhone && <ShuntReadings geometry={geometry} reading={reading} facts={facts} textSize={textSize} />}
+        {!isMedium && <ShuntNames geometry={geometry} facts={facts} textSize={textSize} />}
+        {isMedium && <ReadingColumn geometry={geometry} reading={reading} facts={facts} textSize={textSize} />}
+        {!isPhone && !isMedium && <ShuntReadings geometry={geometry} reading={reading} facts={facts} textSize={textSize} />}
         {!isPhone && <OutputGauge geometry={geometry} reading={reading} facts={facts} textSize={textSize} idealV={idealV} />}
         <LoadSymbol geometry={geometry} kind={document.load.kind} currentA={reading.motorCurrentA} direction={direction} textSize={textSize} />
         <SupplyBox geometry={geometry} busV={reading.busV} hasCapacitor={document.supply.busCapacitanceF > 0} word={words.supply} textSize={textSize} />

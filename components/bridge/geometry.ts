@@ -20,6 +20,9 @@ export type BridgeGeometry = {
 export const WIDE: BridgeGeometry = { width: 640, height: 268, xSupply: 42, xA: 204, xB: 458, yTop: 16, yMid: 135, yBottom: 254, yHigh: 91, yLow: 179, yTopStaff: 43, yBottomStaff: 227, motorRadius: 30 };
 export const PHONE: BridgeGeometry = { width: 358, height: 244, xSupply: 29, xA: 122, xB: 318, yTop: 13, yMid: 122, yBottom: 231, yHigh: 82, yLow: 162, yTopStaff: 38, yBottomStaff: 206, motorRadius: 28 };
 
+/** The phone's drawing with a column of readings at its right: where a wide drawing would shrink until its words meet. */
+export const MEDIUM: BridgeGeometry = { ...PHONE, width: 486 };
+
 /** A diode's side channel: how far off the leg's axis, and how far above and below the switch it leaves it. */
 export const BYPASS_OUT = 23;
 export const BYPASS_REACH = 19;

@@ -55,6 +55,39 @@ export function ShuntReadings({ geometry: g, reading, facts, textSize }: Props) 
   );
 }
 
+/** The same beside the narrower drawing, one block under another, with the name of the shunt. */
+export function ReadingColumn({ geometry: g, reading, facts, textSize }: Props) {
+  const small = textSize(11);
+  const line = small * 1.25;
+  const x = g.xB + 40;
+  return (
+    <g>
+      {shuntWords(reading, facts).map((shunt, index) => {
+        const y = (shunt.leg === null && facts.site !== "supply") || index > 0 ? g.yMid + line * 1.6 : g.yTop + line * 0.8;
+        const [number, unit] = shunt.across.split(" ");
+        return (
+          <g key={shunt.name}>
+            <text x={x} y={y} className={styles.plain} fontSize={small}>
+              <tspan className={styles.strong}>{shunt.name}</tspan> {ohmText(facts.shuntOhm)}
+            </text>
+            <text x={x} y={y + 22} className={styles.numeral} fontSize={20}>
+              {number}
+              <tspan className={styles.unit} fontSize={12} dx="3">
+                {unit}
+              </tspan>
+            </text>
+            {[shunt.flow, shunt.output === null ? "" : `${shunt.outputName.replace("output", "out")} ${shunt.output}`, shunt.limit].map((words, row) => (
+              <text key={row} x={x} y={y + 24 + line * (row + 1)} className={styles.plain} fontSize={small}>
+                {words}
+              </text>
+            ))}
+          </g>
+        );
+      })}
+    </g>
+  );
+}
+
 /** "Shunt A, 10 mΩ" beside each staff. */
 export function ShuntNames({ geometry: g, facts, textSize }: Omit<Props, "reading">) {
   const step = textSize(11) + 2;
@@ -108,7 +141,7 @@ export function OutputGauge({ geometry: g, reading, facts, textSize, idealV }: P
   const gapV = idealV === null ? 0 : Math.abs(idealV - value);
   const isWrong = gapV > facts.sampleLimitA * facts.gainRatio * facts.shuntOhm;
   const small = textSize(11);
-  const x = xm - 58;
+  const x = xm - (g.xB - g.xA < 220 ? 50 : 58);
   const top = g.yMid + g.motorRadius + 3 + small;
   return (
     <g>

@@ -35,7 +35,7 @@ export function Switches({ geometry, gates, states, textSize }: Props) {
               {name}
             </text>
             <text x={textX} y={y + 1 + textSize(11)} textAnchor={anchor} className={isOn[name] || isDiode ? styles.strong : styles.plain} fontSize={textSize(11)}>
-              {isOn[name] ? "on" : isDiode ? "off · diode" : "off"}
+              {isOn[name] ? "on" : isDiode ? "diode" : "off"}
             </text>
           </g>
         );

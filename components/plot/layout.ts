@@ -10,7 +10,7 @@ export const FRAME = {
   wide: { gutter: 120, readout: 150, top: 21, gap: 8, border: 16, axis: 26, codes: 18 },
   compact: { gutter: 40, readout: 10, top: 18, gap: 10, border: 14, axis: 28, codes: 0 },
 };
-const LEAST_STRETCH = 0.66;
+const LEAST_STRETCH = 0.58;
 const MOST_STRETCH = 2.2;
 
 export type PlacedLane = Lane & { y: number; height: number; scale: ValueScale };
@@ -30,7 +30,7 @@ export type PlotLayout = {
 const isStretched = (lane: Lane): boolean => lane.kind === "signed" || lane.kind === "lines";
 const isWithCodes = (lane: Lane): boolean => lane.isReading;
 
-/** Places lanes one under another; plot lanes stretch from 0.66 to 2.2 of their nominal height to fill `wantedHeight`, strips do not. */
+/** Places lanes one under another; plot lanes stretch from 0.58 to 2.2 of their nominal height to fill `wantedHeight`, strips do not. */
 export function layoutLanes(lanes: readonly Lane[], domains: Map<LaneId, Domain>, width: number, wantedHeight: number, isCompact: boolean): PlotLayout {
   const frame = isCompact ? FRAME.compact : FRAME.wide;
   const shown = isCompact ? lanes.map((lane) => ({ ...lane, nominalPx: isStretched(lane) ? 84 : lane.nominalPx })) : lanes;

@@ -103,6 +103,7 @@ describe("the run by keyboard", () => {
     open({ startS: 2.25e-4 });
     region().focus();
     await user.keyboard("{Enter}");
+    await act(() => new Promise((resolve) => requestAnimationFrame(resolve)));
     const motor = region().querySelector<HTMLElement>('[data-lane="motor"]')!;
     act(() => motor.focus());
     await user.keyboard("{Enter}");
