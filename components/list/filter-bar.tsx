@@ -1,0 +1,67 @@
+"use client";
+
+import Link from "next/link";
+import { useRouter } from "next/navigation";
+import type { ScenarioFilter, ScenarioList, ScenarioState } from "@/db/queries/scenarios";
+import { filterHref } from "./filter";
+import { STATE_WORDS } from "./words";
+
+const SHOWN_STATES: readonly ScenarioState[] = ["draft", "inReview", "approved"];
+
+/** Search, state, owner and tag; all of it is in the address, so that a filtered list can be sent. */
+export function FilterBar({ list, filter }: { list: ScenarioList; filter: ScenarioFilter }) {
+  const router = useRouter();
+  const { counts, owners, tags } = list;
+  const go = (change: Partial<ScenarioFilter>) => router.push(filterHref(filter, change));
+  return (
+    <div className="mt-4 flex flex-wrap items-center gap-3">
+      <form
+        role="search"
+        className="w-[308px] max-[719px]:w-full"
+        onSubmit={(event) => {
+          event.preventDefault();
+          go({ search: String(new FormData(event.currentTarget).get("q") ?? "").trim() || undefined });
+        }}
+      >
+        <label className="visually-hidden" htmlFor="scenario-search">
+          Search by name or tag
+        </label>
+        <input id="scenario-search" key={filter.search ?? ""} name="q" type="search" className="text-input h-[30px]!" placeholder="Name or tag, then Enter" defaultValue={filter.search ?? ""} />
+      </form>
+      <nav aria-label="State" className="button-group">
+        <StateLink filter={filter} change={{ state: undefined, archived: false }} isOn={!filter.state && !filter.archived} label={`All ${counts.all}`} />
+        {SHOWN_STATES.map((state) => (
+          <StateLink key={state} filter={filter} change={{ state, archived: false }} isOn={filter.state === state} label={`${STATE_WORDS[state]} ${counts[state]}`} />
+        ))}
+        <StateLink filter={filter} change={{ state: undefined, archived: true }} isOn={filter.archived === true} label={`Archived ${counts.archived}`} />
+      </nav>
+      <Choice label="Owner" value={filter.owner ?? ""} options={[["", "anyone"], ["me", "me"], ...owners.map((one): [string, string] => [one.id, one.name])]} onChange={(owner) => go({ owner: owner || undefined })} />
+      <Choice label="Tag" value={filter.tag ?? ""} options={[["", "any"], ...tags.map((tag): [string, string] => [tag, tag])]} onChange={(tag) => go({ tag: tag || undefined })} />
+      <span className="grow" />
+      <span className="text-ink3 max-[999px]:hidden">Sorted by last change</span>
+    </div>
+  );
+}
+
+function StateLink({ filter, change, isOn, label }: { filter: ScenarioFilter; change: Partial<ScenarioFilter>; isOn: boolean; label: string }) {
+  return (
+    <Link className="button" href={filterHref(filter, change)} aria-current={isOn ? "true" : undefined} prefetch={false}>
+      {label}
+    </Link>
+  );
+}
+
+function Choice({ label, value, options, onChange }: { label: string; value: string; options: [string, string][]; onChange: (value: string) => void }) {
+  return (
+    <label className="flex items-center gap-1">
+      <span>{label}:</span>
+      <select className="h-[28px] border-0 bg-transparent font-medium max-[719px]:h-11" value={value} onChange={(event) => onChange(event.target.value)}>
+        {options.map(([key, text]) => (
+          <option key={key} value={key} className="bg-sheet">
+            {text}
+          </option>
+        ))}
+      </select>
+    </label>
+  );
+}
