@@ -1,6 +1,6 @@
 "use client";
 
-import { useEffect, useId, useMemo, useRef, useState, type CSSProperties, type KeyboardEvent } from "react";
+import { useEffect, useMemo, useRef, useState, type CSSProperties, type KeyboardEvent, type RefObject } from "react";
 import type { Simulation, View } from "@/lib/engine/results";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { eventRows, mergeEvents, rowAt, type EventRow } from "./event-rows";
@@ -37,17 +37,11 @@ export function EventsTable({ view, overview, simulation, document, cursorS, onC
   const scrollerRef = useRef<HTMLDivElement>(null);
   const [scrollPx, setScrollPx] = useState(0);
   const current = rowAt(rows, cursorS, sensing.instantS);
-  const id = useId();
   const format = cursorFormat({ fromS: 0, toS: simulation.durationS }, sensing.periodS);
   const timeColumnPx = fixed(simulation.durationS / format.factor, format.decimals).length * 7.2 + 8;
   const { height: heightPx } = useSize(scrollerRef, { width: 300, height: 8 * ROW_PX });
 
-  useEffect(() => {
-    const scroller = scrollerRef.current;
-    if (scroller === null || current < 0) return;
-    const top = current * ROW_PX;
-    if (top < scroller.scrollTop || top + ROW_PX > scroller.scrollTop + scroller.clientHeight) scroller.scrollTop = Math.max(0, top - scroller.clientHeight / 2 + ROW_PX / 2);
-  }, [current]);
+  useFollow(scrollerRef, current);
 
   const onKeyDown = (event: KeyboardEvent) => {
     const moves: Record<string, number> = { ArrowDown: 1, ArrowUp: -1, PageDown: 8, PageUp: -8, Home: -rows.length, End: rows.length };
@@ -86,33 +80,40 @@ export function EventsTable({ view, overview, simulation, document, cursorS, onC
           <div style={{ height: rows.length * ROW_PX }} role="presentation" />
           {indicesShown(first, last, current).map((index) => {
             const row = rows[index]!;
-            return (
-              <div
-                key={row.timeS}
-                id={`${id}-${index}`}
-                role="row"
-                aria-rowindex={index + 2}
-                aria-current={index === current ? "true" : undefined}
-                data-current={index === current || undefined}
-                className={styles.row}
-                style={{ top: index * ROW_PX }}
-                onClick={() => onCursor(row.timeS)}
-              >
-                <span role="cell" className={styles.number}>
-                  {fixed(row.timeS / format.factor, format.decimals)}
-                </span>
-                <span role="cell" className={styles.name} title={row.label}>
-                  <SampleMark sample={row.sample} />
-                  {row.label}
-                </span>
-                <Value value={valueOf("motorCurrentA", row.timeS)} decimals={2} isSigned />
-                <Value value={valueOf(sensing.readingTrace, row.timeS)} decimals={3} />
-              </div>
-            );
+            const time = fixed(row.timeS / format.factor, format.decimals);
+            return <Row key={row.timeS} row={row} index={index} time={time} isCurrent={index === current} motorA={valueOf("motorCurrentA", row.timeS)} outputV={valueOf(sensing.readingTrace, row.timeS)} onChoose={onCursor} />;
           })}
         </div>
       </div>
     </section>
+  );
+}
+
+/** Keeps the current row in sight, in the middle when it had left. */
+function useFollow(scrollerRef: RefObject<HTMLDivElement | null>, current: number): void {
+  useEffect(() => {
+    const scroller = scrollerRef.current;
+    if (scroller === null || current < 0) return;
+    const top = current * ROW_PX;
+    if (top < scroller.scrollTop || top + ROW_PX > scroller.scrollTop + scroller.clientHeight) scroller.scrollTop = Math.max(0, top - scroller.clientHeight / 2 + ROW_PX / 2);
+  }, [scrollerRef, current]);
+}
+
+type RowProps = { row: EventRow; index: number; time: string; isCurrent: boolean; motorA: number | null; outputV: number | null; onChoose: (timeS: number) => void };
+
+function Row({ row, index, time, isCurrent, motorA, outputV, onChoose }: RowProps) {
+  return (
+    <div role="row" aria-rowindex={index + 2} aria-current={isCurrent ? "true" : undefined} data-current={isCurrent || undefined} className={styles.row} style={{ top: index * ROW_PX }} onClick={() => onChoose(row.timeS)}>
+      <span role="cell" className={styles.number}>
+        {time}
+      </span>
+      <span role="cell" className={styles.name} title={row.label}>
+        <SampleMark sample={row.sample} />
+        {row.label}
+      </span>
+      <Value value={motorA} decimals={2} isSigned />
+      <Value value={outputV} decimals={3} />
+    </div>
   );
 }
 

@@ -21,7 +21,13 @@ const MOVE_PX = 3;
 const WHEEL_STEP = 0.002;
 
 type Touch = { x: number };
-type Pinch = { window: PlotWindow; leftS: number; rightS: number };
+type Pinch = { leftS: number; rightS: number };
+
+/** Left and right of two fingers. */
+function fingers(touches: ReadonlyMap<number, Touch>): [number, number] {
+  const places = [...touches.values()].map((touch) => touch.x);
+  return [Math.min(...places), Math.max(...places)];
+}
 
 /** Nearest of `stops` to `timeS` within `slackS`, else `timeS`. */
 export function snapTo(stops: readonly number[], timeS: number, slackS: number): number {
@@ -51,25 +57,23 @@ export function usePlotPointer(input: PointerInput) {
   const touches = useRef(new Map<number, Touch>());
   const pinch = useRef<Pinch | null>(null);
   const start = useRef<{ x: number; isMoved: boolean } | null>(null);
-  const latest = useRef(input);
-  useEffect(() => {
-    latest.current = input;
-  });
-  useWheel(surface, latest);
+  useWheel(surface, input);
 
   const xOfEvent = (event: PointerEvent) => event.clientX - (surface.current?.getBoundingClientRect().left ?? 0) + scale.x0;
   const timeAt = (x: number) => clamp(timeOf(scale, x), Math.max(0, scale.fromS), Math.min(durationS, scale.toS));
 
-  const beginPinch = () => {
-    const [one, other] = [...touches.current.values()];
-    if (one === undefined || other === undefined) return;
-    const [leftX, rightX] = [Math.min(one.x, other.x), Math.max(one.x, other.x)];
-    pinch.current = { window: { fromS: scale.fromS, toS: scale.toS }, leftS: timeOf(scale, leftX), rightS: timeOf(scale, rightX) };
+  const release = (event: PointerEvent) => {
+    touches.current.delete(event.pointerId);
+    if (touches.current.size < 2) pinch.current = null;
+    if (touches.current.size === 0) start.current = null;
   };
-  const movePinch = (held: Pinch) => {
-    const [one, other] = [...touches.current.values()];
-    if (one === undefined || other === undefined) return;
-    input.onWindow(fitWindow(pinchWindow(scale, held.leftS, held.rightS, Math.min(one.x, other.x), Math.max(one.x, other.x)), durationS, periodS));
+  const beginPinch = () => {
+    const [left, right] = fingers(touches.current);
+    pinch.current = { leftS: timeOf(scale, left), rightS: timeOf(scale, right) };
+  };
+  const movePinch = ({ leftS, rightS }: Pinch) => {
+    const [leftX, rightX] = fingers(touches.current);
+    input.onWindow(fitWindow(pinchWindow(scale, leftS, rightS, leftX, rightX), durationS, periodS));
   };
 
   return {
@@ -92,8 +96,8 @@ export function usePlotPointer(input: PointerInput) {
         if (touch === undefined) return event.pointerType === "touch" ? undefined : setGhostS(timeAt(x));
         touch.x = x;
         if (pinch.current !== null) return movePinch(pinch.current);
-        if (start.current !== null && Math.abs(x - start.current.x) > MOVE_PX) start.current.isMoved = true;
-        if (start.current?.isMoved) input.onCursor(timeAt(x));
+        const began = start.current;
+        if (began !== null && (began.isMoved ||= Math.abs(x - began.x) > MOVE_PX)) input.onCursor(timeAt(x));
       },
       onPointerUp: (event: PointerEvent<HTMLDivElement>) => {
         const isClick = start.current !== null && !start.current.isMoved && pinch.current === null;
@@ -101,20 +105,18 @@ export function usePlotPointer(input: PointerInput) {
         if (isClick && !event.altKey && !event.shiftKey) input.onCursor(snapTo(input.snapS, timeAt(xOfEvent(event)), slackS));
         release(event);
       },
-      onPointerCancel: (event: PointerEvent<HTMLDivElement>) => release(event),
+      onPointerCancel: release,
       onPointerLeave: () => setGhostS(null),
     },
   };
-
-  function release(event: PointerEvent): void {
-    touches.current.delete(event.pointerId);
-    if (touches.current.size < 2) pinch.current = null;
-    if (touches.current.size === 0) start.current = null;
-  }
 }
 
 /** React listens to wheels passively; zooming must be able to keep the page from scrolling. */
-function useWheel(surface: RefObject<HTMLDivElement | null>, latest: RefObject<PointerInput>): void {
+function useWheel(surface: RefObject<HTMLDivElement | null>, input: PointerInput): void {
+  const latest = useRef(input);
+  useEffect(() => {
+    latest.current = input;
+  });
   useEffect(() => {
     const element = surface.current;
     if (element === null) return;
@@ -133,5 +135,5 @@ function useWheel(surface: RefObject<HTMLDivElement | null>, latest: RefObject<P
     };
     element.addEventListener("wheel", onWheel, { passive: false });
     return () => element.removeEventListener("wheel", onWheel);
-  }, [surface, latest]);
+  }, [surface]);
 }
