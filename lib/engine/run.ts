@@ -159,6 +159,11 @@ export class Run {
 
   private isFinite(): boolean {
     const { x } = this.machine.stage;
+    if (this.machine.isStuck) {
+      this.status = "step-limit";
+      this.statusText = `The period that starts at ${this.machine.periodStartS} s needs more than 20 000 pieces. Two limits are likely to be met by turns at one instant; the last input changed is the first to look at.`;
+      return false;
+    }
     if (Number.isFinite(x[0]!) && Number.isFinite(x[1]!) && Number.isFinite(x[2]!)) return true;
     this.status = "not-finite";
     const timeS = this.machine.periodStartS;

@@ -54,10 +54,16 @@ export const COPPER_PER_KELVIN = 0.00393; // temperature coefficient of copper a
 /** Resistance of each shunt (leg A and B, or the single one twice) at its temperature, faults left out. */
 export type ShuntResistances = { aOhm: number; bOhm: number };
 
-/** R_25 (1 + TCR (T - 25)), model.md section 3. */
+/** Beyond this a shunt has melted and its linear coefficient means nothing; the run keeps to it. */
+const SHUNT_MAX_C = 1000;
+/** A linear coefficient never takes a resistance below this share of its value at 25 degC. */
+const SHUNT_LEAST_SHARE = 0.01;
+
+/** R_25 (1 + TCR (T - 25)), model.md section 3, within what a shunt can be. */
 export function shuntAtTemperatureOhm(document: ScenarioDocument, temperatureC: number): number {
   const { resistanceOhm, tcrPpmPerK } = document.sensing.shunt;
-  return resistanceOhm * (1 + tcrPpmPerK * 1e-6 * (temperatureC - 25));
+  const riseK = Math.min(temperatureC, SHUNT_MAX_C) - 25;
+  return resistanceOhm * Math.max(1 + tcrPpmPerK * 1e-6 * riseK, SHUNT_LEAST_SHARE);
 }
 
 /** Times at which the parameters change by the document alone, ascending, without 0. */

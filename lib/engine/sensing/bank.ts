@@ -21,7 +21,7 @@ const CLIP_V = 1e-9;
 const CLIP_BAND_V = 1e-11;
 /** Largest |lambda| h of a piece of a commutation ramp: interpolation error below 1e-8 of the current's change. */
 const RAMP_RATE = 0.25;
-const RAMP_PIECES_MAX = 64;
+const RAMP_PIECES_MAX = 16;
 const WEIGHT_RING = 6;
 /** Parts of a piece in which the slope of an output is looked at for extrema. */
 const EXTREMUM_SCAN = 8;

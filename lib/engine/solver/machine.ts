@@ -18,7 +18,9 @@ export type PeriodState = { period: number; x: Float64Array; rider: number[]; ga
 
 /** Pieces without progress at one instant after which shaft events are let pass: guards that chatter by rounding. */
 const IDLE_PIECES_MAX = 12;
-const LEAST_PROGRESS_S = 1e-15;
+const IDLE_RIDER_MAX = 2;
+/** Pieces of one period after which the run ends with the status `step-limit`: a real one has about ten. */
+const PIECES_MAX = 20_000;
 
 const CURRENT_ROW = new Float64Array([1, 0, 0, 0]);
 
@@ -35,6 +37,9 @@ export class Machine {
   intervals = 0;
   /** Zero-current intervals with both legs undriven were cut by an interruption: the energy balance has a hole. */
   lostEnergy = false;
+  /** A period needed more pieces than PIECES_MAX: something chatters. */
+  isStuck = false;
+  private piecesInPeriod = 0;
   gateA = 0;
   gateB = 0;
   isWaiting = false;
@@ -117,6 +122,7 @@ export class Machine {
     const { stage, rider } = this;
     this.periodStartS = k / this.frequencyHz;
     this.offsetS = 0;
+    this.piecesInPeriod = 0;
     const isLast = k === this.periodCount - 1;
     const endS = isLast ? this.document.run.durationS - this.periodStartS : this.periodS;
     let isChanged = this.applyChanges(SAME_INSTANT_S);
@@ -155,6 +161,7 @@ export class Machine {
       if (changeS < untilS) untilS = changeS;
       if (this.offsetS >= endS - SAME_INSTANT_S) break;
       this.advance(untilS);
+      if (this.isStuck) break;
       if (changeS <= this.offsetS + SAME_INSTANT_S && this.applyChanges(SAME_INSTANT_S)) mustResolve = true;
     }
     this.period = k + 1;
@@ -259,21 +266,27 @@ export class Machine {
       rider.limitPiece(stage);
       stage.prepare(this.changedAtS, this.periodS);
       stage.step();
+      stage.skipsIdle = idle > IDLE_PIECES_MAX;
       let isStageEvent = stage.nextEvent();
-      if (isStageEvent && idle > IDLE_PIECES_MAX && piece[PIECE_STAGE_EVENT]! <= 0) isStageEvent = false;
       if (isStageEvent && piece[PIECE_STAGE_EVENT]! < piece[PIECE_LENGTH]!) {
         piece[PIECE_LENGTH] = piece[PIECE_STAGE_EVENT]!;
         stage.step();
       }
-      if (rider.attempt(stage) && piece[PIECE_RIDER_EVENT]! < piece[PIECE_LENGTH]! && (piece[PIECE_RIDER_EVENT]! > 0 || idle <= IDLE_PIECES_MAX)) {
-        piece[PIECE_LENGTH] = piece[PIECE_RIDER_EVENT]!;
+      if (rider.attempt(stage) && piece[PIECE_RIDER_EVENT]! < piece[PIECE_LENGTH]!) {
+        // an event of the sensing chain that stands still is stepped over, so that its state is on the far side
+        const least = idle > IDLE_RIDER_MAX ? SAME_INSTANT_S * 2 ** (idle - IDLE_RIDER_MAX) : 0;
+        piece[PIECE_LENGTH] = Math.min(Math.max(piece[PIECE_RIDER_EVENT]!, least), piece[PIECE_LENGTH]!);
         isStageEvent = false;
         stage.step();
         rider.attempt(stage);
       }
       const h = piece[PIECE_LENGTH]!;
-      idle = h > LEAST_PROGRESS_S ? 0 : idle + 1;
+      idle = h > SAME_INSTANT_S * 2 ** Math.min(idle, 20) ? 0 : idle + 1;
       this.intervals++;
+      if (++this.piecesInPeriod > PIECES_MAX) {
+        this.isStuck = true;
+        return;
+      }
       if (h > 0) this.commitPiece(isStageEvent);
       this.offsetS = h === restS ? untilS : this.offsetS + h;
       if (isStageEvent) this.takeStageEvent();

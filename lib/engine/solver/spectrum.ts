@@ -23,6 +23,8 @@ export class Spectrum {
   readonly isFrozen = [false, false, false];
   /** Largest |lambda|, 1/s: how finely an interval must be divided where it is sampled. */
   rateMaxPerS = 0;
+  /** Largest angular frequency of an oscillating pair, rad/s; 0 when none oscillates. */
+  oscillationPerS = 0;
 
   private readonly moving = new Int32Array(3);
   private movingCount = 0;
@@ -44,7 +46,9 @@ export class Spectrum {
     } else if (this.movingCount === 2) this.analyseTwo(a, m[0]!, m[1]!);
     else if (this.movingCount === 3) this.analyseThree(a);
     this.rateMaxPerS = 0;
+    this.oscillationPerS = 0;
     if (this.isSpectral) {
+      for (let k = 0; k < this.count; k++) this.oscillationPerS = Math.max(this.oscillationPerS, this.im[k]!);
       for (let k = 0; k < this.count; k++) this.rateMaxPerS = Math.max(this.rateMaxPerS, Math.hypot(this.re[k]!, this.im[k]!));
       this.fillForcing(mode);
     } else for (let i = 0; i < 9; i += 3) this.rateMaxPerS = Math.max(this.rateMaxPerS, Math.abs(a[i]!) + Math.abs(a[i + 1]!) + Math.abs(a[i + 2]!));
@@ -204,9 +208,11 @@ function cubicRoots(a: Float64Array, re: Float64Array, im: Float64Array): boolea
   re[1] = half >= 0 ? half + root : half - root;
   re[2] = re[1] === 0 ? 0 : c0 / re[1]!;
   const scale = Math.max(Math.abs(x), Math.abs(re[1]!), Math.abs(re[2]!));
-  const gap = Math.min(Math.abs(x - re[1]!), Math.abs(x - re[2]!), Math.abs(re[1]! - re[2]!));
-  return gap > CLOSE * scale;
+  return isApart(x, re[1]!, scale) && isApart(x, re[2]!, scale) && isApart(re[1]!, re[2]!, scale);
 }
+
+/** Two roots are far enough apart for their projectors; `scale`: largest root, whose rounding the small ones carry. */
+const isApart = (a: number, b: number, scale: number) => Math.abs(a - b) > CLOSE * Math.max(Math.abs(a), Math.abs(b)) + 1e-11 * scale;
 
 /** The real root of largest magnitude side of x^3 + c2 x^2 + c1 x + c0, by Newton steps kept inside a bracket. */
 function realRoot(c2: number, c1: number, c0: number, bound: number): number {
