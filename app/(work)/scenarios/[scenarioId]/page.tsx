@@ -1,14 +1,26 @@
 import type { Metadata } from "next";
 import { ScenarioWorkbench } from "@/components/scenario/scenario-workbench";
+import { ShareButton } from "@/components/share/share-button";
 import { db } from "@/db/client";
 import { requireScenario } from "@/db/queries/scenarios";
 import { orNotFound, requireScope } from "@/lib/server/actor";
 import { duplicateScenario } from "../actions";
-import { keepMineAsRevision, listKeptDrafts, renameScenario, saveRevision, setTags } from "./actions";
+import {
+  changeExpiry,
+  createShareLink,
+  keepMineAsRevision,
+  listKeptDrafts,
+  listShareLinks,
+  renameScenario,
+  revokeShareLink,
+  saveRevision,
+  setTags,
+} from "./actions";
 
 type Props = { params: Promise<{ scenarioId: string }> };
 
 const actions = { saveRevision, keepMineAsRevision, listKeptDrafts, renameScenario, setTags, duplicateScenario };
+const shareActions = { createShareLink, listShareLinks, revokeShareLink, changeExpiry };
 
 async function loadScenario({ params }: Props) {
   const [{ scenarioId }, scope] = await Promise.all([params, requireScope()]);
@@ -32,6 +44,7 @@ export default async function ScenarioPage(props: Props) {
       mayDuplicate={scenario.mayDuplicate}
       isArchived={scenario.isArchived}
       actions={actions}
+      share={<ShareButton scenarioId={scenario.id} mayShare={scenario.mayShare} actions={shareActions} />}
       initial={{
         scenarioId: scenario.id,
         personId: scope.userId,

@@ -1,0 +1,3 @@
+import type { SessionView } from "@/db/queries/people";
+
+export type OwnSession = SessionView & { isCurrent: boolean };
