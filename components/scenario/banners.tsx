@@ -7,7 +7,6 @@ import { keepMine } from "./saving";
 import { useDuplicate } from "./use-duplicate";
 import { useNow } from "./use-now";
 import type { Opened } from "./workbench-dialogs";
-import controls from "./controls.module.css";
 import styles from "./workbench.module.css";
 
 /** One line each under the sub-head: what came back from a closed tab, whose revision came first, what this role may do. */
@@ -34,13 +33,15 @@ function RestoredBanner() {
   return (
     <p className={styles.banner} role="status">
       <span>
-        <b>{count === 1 ? "1 change" : `${count} changes`} of yours came back.</b> Not saved; kept in this browser since {formatMoment(restored.keptAtMs, nowMs ?? restored.keptAtMs)}.
-        {base.number < newest.number && ` They were made on rev ${base.number}; rev ${newest.number} has been saved since.`}
+        <b>{count === 1 ? "1 change" : `${count} changes`} of yours came back.</b> Not saved; kept in this browser since{" "}
+        {formatMoment(restored.keptAtMs, nowMs ?? restored.keptAtMs)}.
+        {base.number < newest.number &&
+          ` They were made on rev ${base.number}; rev ${newest.number} has been saved since.`}
       </span>
-      <button type="button" className={controls.button} onClick={() => store.getState().acceptRestored()}>
+      <button type="button" className="button" onClick={() => store.getState().acceptRestored()}>
         Keep them
       </button>
-      <button type="button" className={`${controls.button} ${controls.quiet}`} onClick={() => store.getState().discardRestored()}>
+      <button type="button" className="button" data-kind="quiet" onClick={() => store.getState().discardRestored()}>
         Discard, show rev {newest.number}
       </button>
     </p>
@@ -69,10 +70,10 @@ function ConflictBanner({ onOpen }: { onOpen: (dialog: Opened) => void }) {
         </b>{" "}
         You changed {words(mine) || "nothing"}; rev {newest.number} changed {words(theirs) || "nothing"}. Both are kept.
       </span>
-      <button type="button" className={controls.button} onClick={() => onOpen("conflict")}>
+      <button type="button" className="button" onClick={() => onOpen("conflict")}>
         Compare
       </button>
-      <button type="button" className={controls.button} onClick={() => void keepMine(store, actions)}>
+      <button type="button" className="button" onClick={() => void keepMine(store, actions)}>
         Keep mine as rev {newest.number + 1}
       </button>
     </p>
@@ -90,10 +91,12 @@ function RoleBanner({ mayDuplicate, isArchived }: Omit<Props, "onOpen">) {
   return (
     <p className={styles.banner}>
       <span>
-        {isArchived ? "This scenario is archived: restore it in the list to save changes." : "Play with any value; saving here is not part of your role."}
+        {isArchived
+          ? "This scenario is archived: restore it in the list to save changes."
+          : "Play with any value; saving here is not part of your role."}
         {mayDuplicate && " A copy of your own can be saved."}
       </span>
-      <button type="button" className={controls.button} disabled={!mayDuplicate} onClick={() => void duplicate()}>
+      <button type="button" className="button" disabled={!mayDuplicate} onClick={() => void duplicate()}>
         Duplicate with my changes
       </button>
     </p>

@@ -1,7 +1,14 @@
 "use client";
 
 import { useId } from "react";
-import { choiceLabel, choicesAt, inputValue, type ChoiceInput, type FlagInput, type PartInput } from "@/lib/scenario/inputs";
+import {
+  choiceLabel,
+  choicesAt,
+  inputValue,
+  type ChoiceInput,
+  type FlagInput,
+  type PartInput,
+} from "@/lib/scenario/inputs";
 import { FieldNote } from "./field-note";
 import { useScenario, useWorkbench } from "./provider";
 import styles from "./inputs.module.css";
@@ -20,7 +27,13 @@ export function ChoiceRow({ input }: { input: ChoiceInput }) {
   const hint = choices.find((choice) => choice.value === value)?.hint ?? input.help;
   const isOptional = value === "";
   return (
-    <div className={styles.row} data-row="" data-path={path} data-changed={value !== base || undefined} title={value === base ? undefined : `Changed in this draft, was ${choiceLabel(path, base)}`}>
+    <div
+      className={styles.row}
+      data-row=""
+      data-path={path}
+      data-changed={value !== base || undefined}
+      title={value === base ? undefined : `Changed in this draft, was ${choiceLabel(path, base)}`}
+    >
       <label htmlFor={id} className={styles.label}>
         {input.label}
       </label>
@@ -29,7 +42,14 @@ export function ChoiceRow({ input }: { input: ChoiceInput }) {
           {choiceLabel(path, value)}
         </output>
       ) : (
-        <select id={id} className={styles.select} value={value} aria-invalid={problem ? true : undefined} aria-describedby={hint ? `${id}-help` : undefined} onChange={(event) => store.getState().change(path, event.currentTarget.value)}>
+        <select
+          id={id}
+          className={styles.select}
+          value={value}
+          aria-invalid={problem ? true : undefined}
+          aria-describedby={hint ? `${id}-help` : undefined}
+          onChange={(event) => store.getState().change(path, event.currentTarget.value)}
+        >
           {isOptional && <option value="">left out</option>}
           {choices.map((choice) => (
             <option key={choice.value} value={choice.value}>
@@ -58,13 +78,27 @@ export function SwitchRow({ input }: { input: FlagInput | PartInput }) {
   const isLocked = useScenario((state) => state.isLocked);
   const id = useId();
   return (
-    <div className={styles.row} data-row="" data-path={path} data-changed={isOn !== wasOn || undefined} title={isOn === wasOn ? undefined : `Changed in this draft, was ${wasOn ? "on" : "off"}`}>
+    <div
+      className={styles.row}
+      data-row=""
+      data-path={path}
+      data-changed={isOn !== wasOn || undefined}
+      title={isOn === wasOn ? undefined : `Changed in this draft, was ${wasOn ? "on" : "off"}`}
+    >
       <label htmlFor={id} className={styles.label}>
         {input.label}
       </label>
       <span className={styles.switch}>
         <span aria-hidden="true">{isOn ? "yes" : "no"}</span>
-        <input id={id} type="checkbox" role="switch" checked={isOn} disabled={isLocked} aria-describedby={input.help ? `${id}-help` : undefined} onChange={(event) => store.getState().change(path, event.currentTarget.checked)} />
+        <input
+          id={id}
+          type="checkbox"
+          role="switch"
+          checked={isOn}
+          disabled={isLocked}
+          aria-describedby={input.help ? `${id}-help` : undefined}
+          onChange={(event) => store.getState().change(path, event.currentTarget.checked)}
+        />
       </span>
       {problem && (
         <span role="alert" className={styles.problem}>

@@ -1,14 +1,22 @@
 "use client";
 
+import { Dialog } from "@/components/ui/dialog";
 import { diffDocuments, labelOf, valueText } from "@/lib/scenario/diff";
 import { getAt } from "@/lib/scenario/paths";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { useScenario, useWorkbench } from "./provider";
 import { keepMine } from "./saving";
-import { WorkbenchDialog } from "./workbench-dialog";
 import styles from "./controls.module.css";
 
-export type ComparedRow = { path: string; label: string; base: string; theirs: string; mine: string; isTheirs: boolean; isMine: boolean };
+export type ComparedRow = {
+  path: string;
+  label: string;
+  base: string;
+  theirs: string;
+  mine: string;
+  isTheirs: boolean;
+  isMine: boolean;
+};
 
 /** Every input that one of the two changed: before, theirs, mine. */
 export function compareThree(base: ScenarioDocument, theirs: ScenarioDocument, mine: ScenarioDocument): ComparedRow[] {
@@ -45,7 +53,13 @@ export function ConflictDialog({ onClose }: { onClose: () => void }) {
     onClose();
   };
   return (
-    <WorkbenchDialog isOpen isWide title={`${newest.authorName} saved rev ${newest.number} while you were editing rev ${base.number}`} lead="Both versions are kept. Where both changed the same input, both values stand in the row." onClose={onClose}>
+    <Dialog
+      isOpen
+      size="wide"
+      title={`${newest.authorName} saved rev ${newest.number} while you were editing rev ${base.number}`}
+      description="Both versions are kept. Where both changed the same input, both values stand in the row."
+      onClose={onClose}
+    >
       <table className={styles.table}>
         <thead>
           <tr>
@@ -74,13 +88,13 @@ export function ConflictDialog({ onClose }: { onClose: () => void }) {
         </p>
       )}
       <div className={styles.actions}>
-        <button type="button" className={styles.button} onClick={take}>
+        <button type="button" className="button" onClick={take}>
           Take rev {newest.number}, keep mine as a draft
         </button>
-        <button type="button" className={`${styles.button} ${styles.primary}`} disabled={isSaving} onClick={() => void keep()}>
+        <button type="button" className="button" data-kind="primary" disabled={isSaving} onClick={() => void keep()}>
           Keep mine as rev {newest.number + 1}
         </button>
       </div>
-    </WorkbenchDialog>
+    </Dialog>
   );
 }

@@ -36,18 +36,32 @@ export function DeskLayout({ isNarrow }: { isNarrow: boolean }) {
             ))}
           </div>
         )}
-        <div className={styles.scroll} hidden={isResults} data-region="inputs" tabIndex={-1} role="region" aria-label="Inputs">
+        <div
+          className={styles.scroll}
+          hidden={isResults}
+          data-region="inputs"
+          tabIndex={-1}
+          role="region"
+          aria-label="Inputs"
+        >
           <InputsPanel />
         </div>
         {isNarrow && (
-          <div className={styles.scroll} hidden={!isResults} data-region="results" tabIndex={-1} role="region" aria-label="Figures and notices">
+          <div
+            className={styles.scroll}
+            hidden={!isResults}
+            data-region="results"
+            tabIndex={-1}
+            role="region"
+            aria-label="Figures and notices"
+          >
             {results}
           </div>
         )}
       </div>
-      <main id="main" className={styles.middle} data-region="run" tabIndex={-1} aria-label="Run">
+      <section className={styles.middle} data-region="run" tabIndex={-1} aria-label="Run">
         <RunRegion />
-      </main>
+      </section>
       {!isNarrow && (
         <aside className={styles.right} data-region="results" tabIndex={-1} aria-label="Figures and notices">
           {results}

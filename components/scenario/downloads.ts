@@ -10,4 +10,11 @@ export function download(name: string, content: string | Blob, type: string): vo
 }
 
 /** A title as a file name: letters and digits of any script, the rest as hyphens. */
-export const fileNameOf = (title: string, extension: string): string => `${title.toLowerCase().replace(/[^\p{L}\p{N}]+/gu, "-").replace(/^-+|-+$/g, "").slice(0, 60) || "scenario"}.${extension}`;
+export const fileNameOf = (title: string, extension: string): string =>
+  `${
+    title
+      .toLowerCase()
+      .replace(/[^\p{L}\p{N}]+/gu, "-")
+      .replace(/^-+|-+$/g, "")
+      .slice(0, 60) || "scenario"
+  }.${extension}`;

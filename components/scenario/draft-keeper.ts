@@ -13,7 +13,11 @@ export type DraftStorage = {
   remove: (key: string) => Promise<void>;
 };
 
-export const browserStorage: DraftStorage = { read: (key) => get(key), write: (key, value) => set(key, value), remove: (key) => del(key) };
+export const browserStorage: DraftStorage = {
+  read: (key) => get(key),
+  write: (key, value) => set(key, value),
+  remove: (key) => del(key),
+};
 
 export const draftKey = (personId: string, scenarioId: string): string => `slackwater.draft/${personId}/${scenarioId}`;
 
@@ -21,11 +25,23 @@ export const draftKey = (personId: string, scenarioId: string): string => `slack
 const REST_MS = 250;
 
 const isBase = (value: unknown): value is BaseRevision =>
-  typeof value === "object" && value !== null && "number" in value && typeof value.number === "number" && "document" in value && scenarioSchema.safeParse(value.document).success;
+  typeof value === "object" &&
+  value !== null &&
+  "number" in value &&
+  typeof value.number === "number" &&
+  "document" in value &&
+  scenarioSchema.safeParse(value.document).success;
 
 /** A kept draft that this version of the page can still read; its cross-field findings are shown like any other. */
 function readKept(value: unknown): KeptInBrowser | null {
-  if (typeof value !== "object" || value === null || !("base" in value) || !("document" in value) || !("keptAtMs" in value)) return null;
+  if (
+    typeof value !== "object" ||
+    value === null ||
+    !("base" in value) ||
+    !("document" in value) ||
+    !("keptAtMs" in value)
+  )
+    return null;
   const document = scenarioSchema.safeParse(value.document);
   if (!document.success || !isBase(value.base) || typeof value.keptAtMs !== "number") return null;
   return { base: value.base, document: document.data, keptAtMs: value.keptAtMs };
@@ -35,7 +51,11 @@ function readKept(value: unknown): KeptInBrowser | null {
  * Brings back what a closed tab left behind, then keeps every later change. A guest's changes are never kept.
  * `onProblem` hears when the browser refuses to store anything (private windows, a full disk). Returns the way to end it.
  */
-export function keepDraft(store: ScenarioStore, storage: DraftStorage, onProblem: (cause: unknown) => void): () => void {
+export function keepDraft(
+  store: ScenarioStore,
+  storage: DraftStorage,
+  onProblem: (cause: unknown) => void,
+): () => void {
   const { scenarioId, personId, mode } = store.getState();
   if (scenarioId === null || personId === null || mode === "guest") return () => undefined;
   const key = draftKey(personId, scenarioId);
@@ -46,7 +66,9 @@ export function keepDraft(store: ScenarioStore, storage: DraftStorage, onProblem
     clearTimeout(timer);
     timer = undefined;
     const state = store.getState();
-    const done = isDirty(state) ? storage.write(key, { base: state.base, document: state.document, keptAtMs: Date.now() }) : storage.remove(key);
+    const done = isDirty(state)
+      ? storage.write(key, { base: state.base, document: state.document, keptAtMs: Date.now() })
+      : storage.remove(key);
     done.catch(onProblem);
   };
   const keepIfHidden = () => document.visibilityState === "hidden" && timer !== undefined && keep();
@@ -60,7 +82,14 @@ export function keepDraft(store: ScenarioStore, storage: DraftStorage, onProblem
       const state = store.getState();
       // whoever was quicker than the storage keeps what they typed
       if (kept && !isDirty(state) && isDirty(kept)) {
-        store.getState().restoreDraft({ base: kept.base.number === state.base.number ? state.base : kept.base, document: kept.document, keptAtMs: kept.keptAtMs, baseNumber: kept.base.number });
+        store
+          .getState()
+          .restoreDraft({
+            base: kept.base.number === state.base.number ? state.base : kept.base,
+            document: kept.document,
+            keptAtMs: kept.keptAtMs,
+            baseNumber: kept.base.number,
+          });
       }
     })
     .catch(onProblem)

@@ -5,7 +5,10 @@ import type { ScenarioActions } from "./scenario-actions";
 import type { ScenarioStore } from "./store";
 
 /** A copy of one's own, with the changes made here as its second revision. Answers the copy's id. */
-export async function duplicateWithChanges(store: ScenarioStore, actions: Partial<ScenarioActions>): Promise<string | null> {
+export async function duplicateWithChanges(
+  store: ScenarioStore,
+  actions: Partial<ScenarioActions>,
+): Promise<string | null> {
   const { scenarioId, document, base } = store.getState();
   const { duplicateScenario, saveRevision } = actions;
   if (scenarioId === null || !duplicateScenario || !saveRevision) return null;
@@ -15,7 +18,14 @@ export async function duplicateWithChanges(store: ScenarioStore, actions: Partia
     return null;
   }
   if (!isDirty({ document, base })) return copied.value.id;
-  const saved = await reach(() => saveRevision({ scenarioId: copied.value.id, baseRevisionNumber: 1, document, message: "Changes made before copying" }));
+  const saved = await reach(() =>
+    saveRevision({
+      scenarioId: copied.value.id,
+      baseRevisionNumber: 1,
+      document,
+      message: "Changes made before copying",
+    }),
+  );
   if (!saved.ok) {
     store.getState().say(`The copy was made, but not your changes: ${errorText(saved.code)}`);
     return null;

@@ -7,8 +7,10 @@ const lower = (text: string): string => (/^[A-Z]{2}/.test(text) ? text : text.ch
 /** The value of an input in words: "10 mΩ", "Fast decay", "on". */
 export function valueWords(input: Input, document: ScenarioDocument): string {
   const value = inputValue(input, document);
-  if (input.kind === "quantity") return typeof value === "number" ? formatQuantity(value, input.unit, { digits: 6 }).text : "left out";
-  if (input.kind === "choice") return typeof value === "string" ? choiceLabel(input.path, value).toLowerCase() : "left out";
+  if (input.kind === "quantity")
+    return typeof value === "number" ? formatQuantity(value, input.unit, { digits: 6 }).text : "left out";
+  if (input.kind === "choice")
+    return typeof value === "string" ? choiceLabel(input.path, value).toLowerCase() : "left out";
   return value === true ? "on" : "off";
 }
 

@@ -21,7 +21,10 @@ export function exportCsv(store: ScenarioStore): void {
 
 function pictureOf(store: ScenarioStore, theme: ThemeName): string | null {
   const { title, shown, viewWindow } = store.getState();
-  return shown && plotToSvg(shown.view, shown.document, PICTURE, theme, { window: viewWindow, overview: shown.overview, title });
+  return (
+    shown &&
+    plotToSvg(shown.view, shown.document, PICTURE, theme, { window: viewWindow, overview: shown.overview, title })
+  );
 }
 
 export function exportSvg(store: ScenarioStore, theme: ThemeName): void {

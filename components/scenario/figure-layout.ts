@@ -34,10 +34,20 @@ const SHORT: Partial<Record<FigureName, string>> = {
   energyResidualShare: "Energy residual",
 };
 
-const isShownAbove = (name: FigureName): boolean => WIDE.includes(name) || MAIN_FIGURES.some((figure) => figure.name === name);
+const isShownAbove = (name: FigureName): boolean =>
+  WIDE.includes(name) || MAIN_FIGURES.some((figure) => figure.name === name);
 
-export const MORE_FIGURES: readonly { name: FigureName; label: string }[] = FIGURE_LIST.filter(({ name }) => !isShownAbove(name)).map(({ name, label }) => ({ name, label: SHORT[name] ?? label }));
+export const MORE_FIGURES: readonly { name: FigureName; label: string }[] = FIGURE_LIST.filter(
+  ({ name }) => !isShownAbove(name),
+).map(({ name, label }) => ({ name, label: SHORT[name] ?? label }));
 
 /** Figures whose sign says a direction: a plus is written too. */
-const SIGNED: readonly FigureName[] = ["motorMeanA", "supplyMeanA", "reconstructionErrorMeanA", "torqueMeanNm", "speedMeanRadPerS"];
-export const withSign = (name: FigureName, value: number | null, number: string): string => (value !== null && value > 0 && SIGNED.includes(name) ? `+${number}` : number);
+const SIGNED: readonly FigureName[] = [
+  "motorMeanA",
+  "supplyMeanA",
+  "reconstructionErrorMeanA",
+  "torqueMeanNm",
+  "speedMeanRadPerS",
+];
+export const withSign = (name: FigureName, value: number | null, number: string): string =>
+  value !== null && value > 0 && SIGNED.includes(name) ? `+${number}` : number;

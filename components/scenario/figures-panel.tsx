@@ -93,7 +93,9 @@ function WorstError() {
         <Why name="reconstructionErrorMaxA">Reconstructed current, worst error</Why>
       </dt>
       <dd className={styles.figure} data-figure="reconstructionErrorMaxA" data-fault={value > limitA || undefined}>
-        {old !== null && old !== value && <span className={styles.old}>{formatFigure("reconstructionErrorMaxA", old).text} to</span>}
+        {old !== null && old !== value && (
+          <span className={styles.old}>{formatFigure("reconstructionErrorMaxA", old).text} to</span>
+        )}
         {written.number}
         <small>
           {written.unit} <span className={styles.limit}>limit {formatQuantity(limitA, "A", { digits: 2 }).text}</span>

@@ -1,10 +1,11 @@
 "use client";
 
 import { useState } from "react";
+import { Dialog } from "@/components/ui/dialog";
+import { TextField } from "@/components/ui/text-field";
 import { errorText } from "@/lib/errors";
 import { useScenario, useWorkbench } from "./provider";
 import { reach } from "./saving";
-import { WorkbenchDialog } from "./workbench-dialog";
 import styles from "./controls.module.css";
 
 /** Title and tags belong to the scenario, not to a revision: they are changed at once. */
@@ -21,7 +22,10 @@ export function IdentityDialog({ onClose }: { onClose: () => void }) {
     setBusy(true);
     setProblem(null);
     const state = store.getState();
-    const wanted = tags.split(",").map((one) => one.trim()).filter(Boolean);
+    const wanted = tags
+      .split(",")
+      .map((one) => one.trim())
+      .filter(Boolean);
     if (title.trim() !== state.title) {
       const result = await reach(() => renameScenario({ scenarioId, title }));
       if (!result.ok) return fail(result.findings?.[0]?.text ?? errorText(result.code));
@@ -39,36 +43,49 @@ export function IdentityDialog({ onClose }: { onClose: () => void }) {
     setProblem(text);
   };
   return (
-    <WorkbenchDialog isOpen title="Title and tags" lead="They belong to the scenario and change for everyone at once." onClose={onClose}>
+    <Dialog
+      isOpen
+      title="Title and tags"
+      description="They belong to the scenario and change for everyone at once."
+      onClose={onClose}
+    >
       <form
         onSubmit={(event) => {
           event.preventDefault();
           void apply();
         }}
       >
-        <label className={styles.field}>
-          <span>Title</span>
-          <input value={title} maxLength={120} required onChange={(event) => setTitle(event.currentTarget.value)} />
-        </label>
-        <label className={styles.field}>
-          <span>Tags</span>
-          <input value={tags} onChange={(event) => setTags(event.currentTarget.value)} />
-          <small>Separated by commas, twelve at most.</small>
-        </label>
+        <div className={styles.fields}>
+          <TextField
+            id="scenario-title"
+            label="Title"
+            value={title}
+            maxLength={120}
+            required
+            onChange={(event) => setTitle(event.currentTarget.value)}
+          />
+          <TextField
+            id="scenario-tags"
+            label="Tags"
+            hint="Separated by commas, twelve at most."
+            value={tags}
+            onChange={(event) => setTags(event.currentTarget.value)}
+          />
+        </div>
         {problem && (
           <p role="alert" className={styles.problem}>
             {problem}
           </p>
         )}
         <div className={styles.actions}>
-          <button type="button" className={styles.button} onClick={onClose}>
+          <button type="button" className="button" onClick={onClose}>
             Cancel
           </button>
-          <button type="submit" className={`${styles.button} ${styles.primary}`} disabled={isBusy}>
+          <button type="submit" className="button" data-kind="primary" disabled={isBusy}>
             Change title and tags
           </button>
         </div>
       </form>
-    </WorkbenchDialog>
+    </Dialog>
   );
 }

@@ -1,11 +1,12 @@
 "use client";
 
 import { useState } from "react";
+import { Dialog } from "@/components/ui/dialog";
+import { TextField } from "@/components/ui/text-field";
 import type { Finding } from "@/lib/result";
 import { labelOf } from "@/lib/scenario/diff";
 import { upgradeScenario } from "@/lib/scenario/upgrade";
 import { useScenario, useWorkbench } from "./provider";
-import { WorkbenchDialog } from "./workbench-dialog";
 import styles from "./controls.module.css";
 
 /** Far above any scenario; a larger file is not one. */
@@ -24,17 +25,30 @@ export function ImportDialog({ onClose }: { onClose: () => void }) {
     const json = parseJson(await file.text());
     if (!json.ok) return setProblem({ text: `${file.name} is not valid JSON: ${json.text}`, findings: [] });
     const parsed = upgradeScenario(json.value);
-    if (!parsed.ok) return setProblem({ text: `${file.name} has ${parsed.findings.length === 1 ? "a value" : `${parsed.findings.length} values`} that cannot be taken. Nothing was changed.`, findings: parsed.findings });
+    if (!parsed.ok)
+      return setProblem({
+        text: `${file.name} has ${parsed.findings.length === 1 ? "a value" : `${parsed.findings.length} values`} that cannot be taken. Nothing was changed.`,
+        findings: parsed.findings,
+      });
     store.getState().replaceDocument(parsed.document, `import of ${file.name}`);
     store.getState().say(`${file.name} is in the draft, not saved yet`, true);
     onClose();
   };
   return (
-    <WorkbenchDialog isOpen isWide={problem !== null} title="Import a document" lead="A scenario document as JSON takes the place of the draft. Undo brings the draft back." onClose={onClose}>
-      <label className={styles.field}>
-        <span>File</span>
-        <input type="file" accept="application/json,.json" onChange={(event) => void read(event.currentTarget.files?.[0])} />
-      </label>
+    <Dialog
+      isOpen
+      {...(problem ? { size: "wide" as const } : {})}
+      title="Import a document"
+      description="A scenario document as JSON takes the place of the draft. Undo brings the draft back."
+      onClose={onClose}
+    >
+      <TextField
+        id="document-file"
+        label="File"
+        type="file"
+        accept="application/json,.json"
+        onChange={(event) => void read(event.currentTarget.files?.[0])}
+      />
       {problem && (
         <div role="alert">
           <p className={styles.problem}>{problem.text}</p>
@@ -62,12 +76,7 @@ export function ImportDialog({ onClose }: { onClose: () => void }) {
           )}
         </div>
       )}
-      <div className={styles.actions}>
-        <button type="button" className={styles.button} onClick={onClose}>
-          Close
-        </button>
-      </div>
-    </WorkbenchDialog>
+    </Dialog>
   );
 }
 

@@ -69,7 +69,9 @@ function focusField(root: HTMLElement | null, path: string): void {
   while (at !== "") {
     const row = `:is([data-path="${CSS.escape(at)}"], [data-path^="${CSS.escape(at)}."])`;
     // of a part with several fields the first number is what a notice means
-    const field = root.querySelector<HTMLElement>(`${row} input[type=text]`) ?? root.querySelector<HTMLElement>(`${row} :is(input, select)`);
+    const field =
+      root.querySelector<HTMLElement>(`${row} input[type=text]`) ??
+      root.querySelector<HTMLElement>(`${row} :is(input, select)`);
     if (field) {
       field.scrollIntoView?.({ block: "center" });
       field.focus();

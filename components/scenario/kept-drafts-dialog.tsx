@@ -1,6 +1,7 @@
 "use client";
 
 import { useEffect, useState } from "react";
+import { Dialog } from "@/components/ui/dialog";
 import type { KeptDraft } from "@/db/queries/revisions";
 import { errorText } from "@/lib/errors";
 import { diffDocuments } from "@/lib/scenario/diff";
@@ -8,7 +9,6 @@ import { useScenario, useWorkbench } from "./provider";
 import { formatMoment } from "./saved-words";
 import { reach } from "./saving";
 import { useNow } from "./use-now";
-import { WorkbenchDialog } from "./workbench-dialog";
 import styles from "./controls.module.css";
 
 /** One's own versions that came second and were not saved: each can be brought back into the draft. */
@@ -37,7 +37,13 @@ export function KeptDraftsDialog({ onClose }: { onClose: () => void }) {
     onClose();
   };
   return (
-    <WorkbenchDialog isOpen isWide title="Kept drafts" lead="Your own versions that someone else's revision came before. Bringing one back puts it into the draft; nothing is saved by it." onClose={onClose}>
+    <Dialog
+      isOpen
+      size="wide"
+      title="Kept drafts"
+      description="Your own versions that someone else's revision came before. Bringing one back puts it into the draft; nothing is saved by it."
+      onClose={onClose}
+    >
       {problem && (
         <p role="alert" className={styles.problem}>
           {problem}
@@ -53,7 +59,7 @@ export function KeptDraftsDialog({ onClose }: { onClose: () => void }) {
               <th scope="col">Started from</th>
               <th scope="col">Differs from rev {base.number} in</th>
               <th scope="col">
-                <span className="sr">Bring back</span>
+                <span className="visually-hidden">Bring back</span>
               </th>
             </tr>
           </thead>
@@ -64,9 +70,14 @@ export function KeptDraftsDialog({ onClose }: { onClose: () => void }) {
                 <tr key={draft.id}>
                   <td>{formatMoment(new Date(draft.createdAt).getTime(), nowMs)}</td>
                   <td>rev {draft.baseNumber}</td>
-                  <td>{changes.slice(0, 3).map((one) => one.text).join("; ") || "nothing"}</td>
                   <td>
-                    <button type="button" className={styles.button} onClick={() => bringBack(draft)}>
+                    {changes
+                      .slice(0, 3)
+                      .map((one) => one.text)
+                      .join("; ") || "nothing"}
+                  </td>
+                  <td>
+                    <button type="button" className="button" onClick={() => bringBack(draft)}>
                       Bring back
                     </button>
                   </td>
@@ -76,11 +87,6 @@ export function KeptDraftsDialog({ onClose }: { onClose: () => void }) {
           </tbody>
         </table>
       )}
-      <div className={styles.actions}>
-        <button type="button" className={styles.button} onClick={onClose}>
-          Close
-        </button>
-      </div>
-    </WorkbenchDialog>
+    </Dialog>
   );
 }

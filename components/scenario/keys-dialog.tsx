@@ -1,8 +1,7 @@
 "use client";
 
+import { Dialog } from "@/components/ui/dialog";
 import { useScenario, useWorkbench } from "./provider";
-import { WorkbenchDialog } from "./workbench-dialog";
-import controls from "./controls.module.css";
 import styles from "./keys.module.css";
 
 type Entry = { keys: string[]; does: string };
@@ -67,9 +66,19 @@ export function KeysDialog({ onClose }: { onClose: () => void }) {
   const { store } = useWorkbench();
   const areLettersOn = useScenario((state) => state.areLettersOn);
   return (
-    <WorkbenchDialog isOpen isWide title="Keys" lead="Single-letter keys work when the run has focus." onClose={onClose}>
+    <Dialog
+      isOpen
+      size="wide"
+      title="Keys"
+      description="Single-letter keys work when the run has focus."
+      onClose={onClose}
+    >
       <label className={styles.switch}>
-        <input type="checkbox" checked={areLettersOn} onChange={(event) => store.getState().setLetters(event.currentTarget.checked)} />
+        <input
+          type="checkbox"
+          checked={areLettersOn}
+          onChange={(event) => store.getState().setLetters(event.currentTarget.checked)}
+        />
         Single-letter keys and the question mark are on
       </label>
       <div className={styles.groups}>
@@ -91,11 +100,6 @@ export function KeysDialog({ onClose }: { onClose: () => void }) {
           </section>
         ))}
       </div>
-      <div className={controls.actions}>
-        <button type="button" className={controls.button} onClick={onClose}>
-          Close
-        </button>
-      </div>
-    </WorkbenchDialog>
+    </Dialog>
   );
 }

@@ -13,7 +13,12 @@ export function ListRows({ list }: { list: ListInfo }) {
   const { store } = useWorkbench();
   const document = useScenario((state) => state.document);
   const isLocked = useScenario((state) => state.isLocked);
-  const problem = useScenario((state) => state.findings.find((finding) => finding.path === list.path || /^\d+$/.test(finding.path.slice(list.path.length + 1)))?.text);
+  const problem = useScenario(
+    (state) =>
+      state.findings.find(
+        (finding) => finding.path === list.path || /^\d+$/.test(finding.path.slice(list.path.length + 1)),
+      )?.text,
+  );
   const rows = rowsOf(document, list.path);
   const name = list.row.toLowerCase();
   const remove = (index: number) => {
@@ -28,7 +33,12 @@ export function ListRows({ list }: { list: ListInfo }) {
             <div className={styles.entryHead}>
               <span>{entryTitle(list, document, index)}</span>
               {!isLocked && (
-                <button type="button" className={styles.remove} aria-label={`Remove ${name} ${index + 1}`} onClick={() => remove(index)}>
+                <button
+                  type="button"
+                  className={styles.remove}
+                  aria-label={`Remove ${name} ${index + 1}`}
+                  onClick={() => remove(index)}
+                >
                   Remove
                 </button>
               )}
@@ -43,7 +53,11 @@ export function ListRows({ list }: { list: ListInfo }) {
         </p>
       )}
       {!isLocked && canAddRow(document, list.path) && (
-        <button type="button" className={styles.add} onClick={() => store.getState().addRow(list.path, list.add.toLowerCase())}>
+        <button
+          type="button"
+          className={styles.add}
+          onClick={() => store.getState().addRow(list.path, list.add.toLowerCase())}
+        >
           {list.add}
         </button>
       )}
@@ -57,5 +71,7 @@ function rowLabel(list: ListInfo, input: Input, index: number): string {
 
 function entryTitle(list: ListInfo, document: ScenarioDocument, index: number): string {
   if (list.path !== "command.points") return `${list.row} ${index + 1}`;
-  return `From ${formatQuantity(document.command.points[index]?.timeS ?? 0, "s", { digits: 4 }).text}`;
+  const point = document.command.points[index];
+  if (!point) return "";
+  return `${point.ramp === "linear" ? "Reached at" : "From"} ${formatQuantity(point.timeS, "s", { digits: 4 }).text}`;
 }

@@ -19,10 +19,19 @@ const TUNED = [
 ];
 
 /** A small scenario that runs in the page: nothing to sign in to, nothing kept. */
-export function LiveExample({ document, createClient = createEngineClient }: { document: ScenarioDocument; createClient?: () => EngineClient }) {
+export function LiveExample({
+  document,
+  createClient = createEngineClient,
+}: {
+  document: ScenarioDocument;
+  createClient?: () => EngineClient;
+}) {
   const base = { number: 1, document, savedAtMs: 0, authorName: "" };
   return (
-    <ScenarioProvider createClient={createClient} initial={{ scenarioId: null, personId: null, mode: "guest", title: document.title, tags: [], base }}>
+    <ScenarioProvider
+      createClient={createClient}
+      initial={{ scenarioId: null, personId: null, mode: "guest", title: document.title, tags: [], base }}
+    >
       <Example />
     </ScenarioProvider>
   );

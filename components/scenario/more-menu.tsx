@@ -17,11 +17,14 @@ export function MoreMenu({ onOpen, mayDuplicate }: Props) {
   const mode = useScenario((state) => state.mode);
   const hasRun = useScenario((state) => state.shown !== null);
   const duplicate = useDuplicate();
-  const png = () => void exportPng(store, theme).catch(() => store.getState().say("This browser could not make the picture; take the SVG instead"));
+  const png = () =>
+    void exportPng(store, theme).catch(() =>
+      store.getState().say("This browser could not make the picture; take the SVG instead"),
+    );
   return (
     <DropdownMenu.Root>
       <DropdownMenu.Trigger asChild>
-        <button type="button" className={`${styles.button} ${styles.square}`} aria-label="More">
+        <button type="button" className="button" aria-label="More">
           <svg width="17" height="4" viewBox="0 0 17 4" aria-hidden="true">
             <circle cx="2" cy="2" r="1.7" fill="currentColor" />
             <circle cx="8.5" cy="2" r="1.7" fill="currentColor" />
@@ -41,8 +44,18 @@ export function MoreMenu({ onOpen, mayDuplicate }: Props) {
           {mode !== "guest" && (
             <>
               <DropdownMenu.Separator className={styles.separator} />
-              <Item disabled={mode !== "edit" || !actions.renameScenario} onSelect={() => onOpen("identity")} words="Title and tags …" reason={mode === "edit" ? undefined : "not with your role"} />
-              <Item disabled={!mayDuplicate} onSelect={() => void duplicate()} words="Duplicate" reason={mayDuplicate ? undefined : "not with your role"} />
+              <Item
+                disabled={mode !== "edit" || !actions.renameScenario}
+                onSelect={() => onOpen("identity")}
+                words="Title and tags …"
+                reason={mode === "edit" ? undefined : "not with your role"}
+              />
+              <Item
+                disabled={!mayDuplicate}
+                onSelect={() => void duplicate()}
+                words="Duplicate"
+                reason={mayDuplicate ? undefined : "not with your role"}
+              />
               {actions.listKeptDrafts && <Item onSelect={() => onOpen("drafts")} words="Kept drafts …" />}
             </>
           )}
@@ -54,7 +67,13 @@ export function MoreMenu({ onOpen, mayDuplicate }: Props) {
   );
 }
 
-type ItemProps = { words: string; onSelect: () => void; disabled?: boolean; reason?: string | undefined; hint?: string };
+type ItemProps = {
+  words: string;
+  onSelect: () => void;
+  disabled?: boolean;
+  reason?: string | undefined;
+  hint?: string;
+};
 
 function Item({ words, onSelect, disabled = false, reason, hint }: ItemProps) {
   return (

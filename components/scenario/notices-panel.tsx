@@ -1,6 +1,7 @@
 "use client";
 
 import type { ReactNode } from "react";
+import { CautionSign, FaultSign, NoteSign } from "@/components/ui/signs";
 import type { Notice, Severity } from "@/lib/engine/results";
 import { inputAt } from "@/lib/scenario/inputs";
 import { labelOf } from "@/lib/scenario/diff";
@@ -58,12 +59,18 @@ export function NoticesPanel({ onGo }: { onGo?: (where: "run" | "inputs") => voi
           </Item>
         ))}
         {sorted.map((notice) => (
-          <Item key={`${notice.code} ${notice.path ?? ""} ${notice.timeS ?? ""}`} severity={notice.severity} title={notice.title}>
+          <Item
+            key={`${notice.code} ${notice.path ?? ""} ${notice.timeS ?? ""}`}
+            severity={notice.severity}
+            title={notice.title}
+          >
             <p>{notice.text}</p>
             <Links notice={notice} onTime={goToTime} onField={goToField} />
           </Item>
         ))}
-        {sorted.length === 0 && findings.length === 0 && run.phase !== "failed" && <li className={styles.none}>Nothing to say about this run.</li>}
+        {sorted.length === 0 && findings.length === 0 && run.phase !== "failed" && (
+          <li className={styles.none}>Nothing to say about this run.</li>
+        )}
       </ul>
     </section>
   );
@@ -72,7 +79,15 @@ export function NoticesPanel({ onGo }: { onGo?: (where: "run" | "inputs") => voi
 const NONE: readonly Notice[] = [];
 const fieldWords = (path: string): string => (inputAt(path)?.label ?? nameOf(path)).toLowerCase();
 
-function Links({ notice, onTime, onField }: { notice: Notice; onTime: (timeS: number) => void; onField: (path: string) => void }) {
+function Links({
+  notice,
+  onTime,
+  onField,
+}: {
+  notice: Notice;
+  onTime: (timeS: number) => void;
+  onField: (path: string) => void;
+}) {
   const { timeS, path } = notice;
   if (timeS === undefined && path === undefined) return null;
   return (
@@ -97,9 +112,16 @@ const countOf = (count: number, word: string): string => `${count} ${word}${coun
 export function NoticeCount() {
   const words = useScenario((state) => {
     const notices = state.shown?.simulation.notices ?? NONE;
-    const faults = notices.filter((notice) => notice.severity === "fault").length + state.findings.length + (state.run.phase === "failed" ? 1 : 0);
+    const faults =
+      notices.filter((notice) => notice.severity === "fault").length +
+      state.findings.length +
+      (state.run.phase === "failed" ? 1 : 0);
     const cautions = notices.filter((notice) => notice.severity === "caution").length;
-    return [faults > 0 ? countOf(faults, "fault") : "", cautions > 0 ? countOf(cautions, "caution") : ""].filter(Boolean).join(" · ") || "none";
+    return (
+      [faults > 0 ? countOf(faults, "fault") : "", cautions > 0 ? countOf(cautions, "caution") : ""]
+        .filter(Boolean)
+        .join(" · ") || "none"
+    );
   });
   return <span className={styles.count}>{words}</span>;
 }
@@ -116,29 +138,16 @@ function Item({ severity, title, children }: { severity: Severity; title: string
   );
 }
 
-/** Octagon, triangle, ring: shape first, hue second. */
+const SIGNS = { fault: FaultSign, caution: CautionSign, note: NoteSign };
+const SEVERITY_WORDS = { fault: "Fault", caution: "Caution", note: "Note" };
+
+/** Octagon, triangle, ring: shape first, hue second; the word for who does not see it. */
 export function SeverityGlyph({ severity }: { severity: Severity }) {
-  const name = { fault: "Fault", caution: "Caution", note: "Note" }[severity];
+  const Sign = SIGNS[severity];
   return (
-    <svg width="16" height="16" viewBox="0 0 16 16" role="img" aria-label={name}>
-      {severity === "fault" && (
-        <>
-          <path d="M5.1 1h5.8L15 5.1v5.8L10.9 15H5.1L1 10.9V5.1z" fill="var(--fault)" />
-          <path d="M8 4v5M8 10.6v1.6" stroke="var(--on-ink)" strokeWidth="1.8" />
-        </>
-      )}
-      {severity === "caution" && (
-        <>
-          <path d="M8 1.5 15 14H1z" fill="var(--caution-tint)" stroke="var(--caution)" strokeWidth="1.3" />
-          <path d="M8 5.6v4.6M8 11.2v1.5" stroke="var(--caution)" strokeWidth="1.6" />
-        </>
-      )}
-      {severity === "note" && (
-        <>
-          <circle cx="8" cy="8" r="6.4" fill="none" stroke="var(--ink2)" strokeWidth="1.2" />
-          <path d="M8 7v5M8 4.2v1.6" stroke="var(--ink2)" strokeWidth="1.6" />
-        </>
-      )}
-    </svg>
+    <span className={styles.glyph}>
+      <Sign />
+      <span className="visually-hidden">{SEVERITY_WORDS[severity]}: </span>
+    </span>
   );
 }

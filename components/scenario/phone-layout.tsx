@@ -17,15 +17,19 @@ const LANES_PX = 330;
 export function PhoneLayout() {
   const [tab, setTab] = useState<Tab>("run");
   const shown = useScenario((state) => state.shown);
-  const noticeCount = useScenario((state) => (state.shown?.simulation.notices.filter((notice) => notice.severity !== "note").length ?? 0) + state.findings.length);
+  const noticeCount = useScenario(
+    (state) =>
+      (state.shown?.simulation.notices.filter((notice) => notice.severity !== "note").length ?? 0) +
+      state.findings.length,
+  );
   return (
     <div className={styles.phone}>
-      <main id="main" className={styles.sheet} data-region={tab} tabIndex={-1} aria-label={WORDS[tab]}>
+      <section className={styles.sheet} data-region={tab} tabIndex={-1} aria-label={WORDS[tab]}>
         {tab === "run" && (shown ? <RunSheet onNotices={() => setTab("notices")} /> : <NoRunYet />)}
         {tab === "inputs" && <InputsPanel />}
         {tab === "figures" && <FiguresPanel />}
         {tab === "notices" && <NoticesPanel onGo={(where) => setTab(where)} />}
-      </main>
+      </section>
       <footer className={styles.bar}>
         {tab === "run" && shown && <Steps shown={shown} isPhone />}
         <nav className={styles.tabs} aria-label="Parts of the scenario">

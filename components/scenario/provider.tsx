@@ -9,7 +9,12 @@ import type { ScenarioActions } from "./scenario-actions";
 import type { InitialScenario } from "./scenario-state";
 import { createScenarioStore, type ScenarioStore, type ScenarioStoreState } from "./store";
 
-export type Workbench = { store: ScenarioStore; actions: Partial<ScenarioActions>; runNow: () => void; cancelRun: () => void };
+export type Workbench = {
+  store: ScenarioStore;
+  actions: Partial<ScenarioActions>;
+  runNow: () => void;
+  cancelRun: () => void;
+};
 
 const WorkbenchContext = createContext<Workbench | null>(null);
 
@@ -30,10 +35,18 @@ export function ScenarioProvider({ initial, actions = {}, createClient, storage 
     controller.current = createRunController(store, createClient());
     return () => controller.current?.dispose();
   }, [store, createClient]);
-  useEffect(() => keepDraft(store, storage, (cause) => console.warn("the draft is not kept in this browser", cause)), [store, storage]);
+  useEffect(
+    () => keepDraft(store, storage, (cause) => console.warn("the draft is not kept in this browser", cause)),
+    [store, storage],
+  );
   useEffect(() => followConnection(store), [store]);
   const workbench = useMemo(
-    (): Workbench => ({ store, actions, runNow: () => controller.current?.runNow(), cancelRun: () => controller.current?.cancel() }),
+    (): Workbench => ({
+      store,
+      actions,
+      runNow: () => controller.current?.runNow(),
+      cancelRun: () => controller.current?.cancel(),
+    }),
     [store, actions],
   );
   return <WorkbenchContext.Provider value={workbench}>{children}</WorkbenchContext.Provider>;

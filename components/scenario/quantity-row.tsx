@@ -1,6 +1,6 @@
 "use client";
 
-import { memo, useId } from "react";
+import { memo, useId, useMemo } from "react";
 import { writeQuantity, type QuantityShape } from "@/components/ui/quantity-text";
 import { QuantityField } from "@/components/ui/quantity-field";
 import { Slider } from "@/components/ui/slider";
@@ -13,20 +13,39 @@ import { useScenario, useWorkbench } from "./provider";
 import { QuantitySymbol } from "./symbol";
 import styles from "./inputs.module.css";
 
-const shapeOf = ({ unit, min, max, isMaxOpen, isWhole }: QuantityInput): QuantityShape => ({ unit, min, max, isMaxOpen, isWhole });
+const shapeOf = ({ unit, min, max, isMaxOpen, isWhole }: QuantityInput): QuantityShape => ({
+  unit,
+  min,
+  max,
+  isMaxOpen,
+  isWhole,
+});
 
 /** One number of the document: label, symbol, field, and the hairline below it as its slider. */
-export const QuantityRow = memo(function QuantityRow({ input, label = input.label }: { input: QuantityInput; label?: string }) {
+export const QuantityRow = memo(function QuantityRow({
+  input,
+  label = input.label,
+}: {
+  input: QuantityInput;
+  label?: string;
+}) {
   const { path } = input;
   const { store } = useWorkbench();
   const value = useScenario((state) => asNumber(getAt(state.document, path)));
   const base = useScenario((state) => asNumber(getAt(state.base.document, path)));
   const refused = useScenario((state) => state.refusedText[path] ?? null);
   const problem = useScenario((state) => state.findings.find((finding) => finding.path === path)?.text);
-  const start = useScenario((state) => (state.gesture?.path === path ? asNumber(getAt(state.gesture.before, path)) : state.dragStart?.path === path ? state.dragStart.value : null));
+  const start = useScenario((state) =>
+    state.gesture?.path === path
+      ? asNumber(getAt(state.gesture.before, path))
+      : state.dragStart?.path === path
+        ? state.dragStart.value
+        : null,
+  );
   const isLocked = useScenario((state) => state.isLocked);
   const id = useId();
   const shape = shapeOf(input);
+  const ticks = useMemo(() => preferredPositions(input), [input]);
   const { slider } = input;
   const write = (one: number | null) => (one === null ? "left out" : writeQuantity(one, shape).text);
   const act = store.getState;
@@ -37,7 +56,13 @@ export const QuantityRow = memo(function QuantityRow({ input, label = input.labe
     pageBy: (one: number, direction: 1 | -1) => pageStepped(input, one, direction),
   };
   return (
-    <div className={styles.row} data-row="" data-path={path} data-changed={isChanged || undefined} title={isChanged ? `Changed in this draft, was ${write(base)}` : undefined}>
+    <div
+      className={styles.row}
+      data-row=""
+      data-path={path}
+      data-changed={isChanged || undefined}
+      title={isChanged ? `Changed in this draft, was ${write(base)}` : undefined}
+    >
       <label htmlFor={id} className={styles.label}>
         {label}
         {input.symbol && <QuantitySymbol symbol={input.symbol} />}
@@ -72,7 +97,7 @@ export const QuantityRow = memo(function QuantityRow({ input, label = input.labe
           max={slider.max}
           position={sliderPosition(slider, value)}
           startPosition={start === null || start === value ? null : sliderPosition(slider, start)}
-          ticks={preferredPositions(input)}
+          ticks={ticks}
           valueAt={(position, snapShare) => snapped(input, valueAtPosition(input, position), snapShare)}
           resetValue={base}
           onStart={() => act().beginDrag(path)}
@@ -86,9 +111,19 @@ export const QuantityRow = memo(function QuantityRow({ input, label = input.labe
 }, isSameInput);
 
 /** Inputs are made anew with each document; a row cares for what it shows. */
-export function isSameInput(one: { input: QuantityInput; label?: string }, other: { input: QuantityInput; label?: string }): boolean {
+export function isSameInput(
+  one: { input: QuantityInput; label?: string },
+  other: { input: QuantityInput; label?: string },
+): boolean {
   const [a, b] = [one.input, other.input];
-  return a.path === b.path && a.unit === b.unit && a.min === b.min && a.max === b.max && a.name === b.name && one.label === other.label;
+  return (
+    a.path === b.path &&
+    a.unit === b.unit &&
+    a.min === b.min &&
+    a.max === b.max &&
+    a.name === b.name &&
+    one.label === other.label
+  );
 }
 
 const asNumber = (value: unknown): number | null => (typeof value === "number" ? value : null);

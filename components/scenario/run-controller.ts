@@ -36,14 +36,23 @@ export function createRunController(store: ScenarioStore, client: EngineClient):
   const isLive = (document: ScenarioDocument): boolean => {
     const { run, shown } = store.getState();
     if (periodCountOf(document) <= LIVE_PERIODS) return true;
-    return run.computeMs !== null && run.computeMs <= LIVE_MS && shown !== null && periodCountOf(document) <= 2 * periodCountOf(shown.document);
+    return (
+      run.computeMs !== null &&
+      run.computeMs <= LIVE_MS &&
+      shown !== null &&
+      periodCountOf(document) <= 2 * periodCountOf(shown.document)
+    );
   };
 
   const request = (document: ScenarioDocument, columnCount: number) => {
     const { shown, viewWindow } = store.getState();
     const toS = Math.min(viewWindow.toS, document.run.durationS);
     const isUsable = shown !== null && viewWindow.fromS < toS;
-    return { document, overviewColumnCount: COLUMNS.overview, ...(isUsable ? { view: { fromS: viewWindow.fromS, toS, columnCount } } : {}) };
+    return {
+      document,
+      overviewColumnCount: COLUMNS.overview,
+      ...(isUsable ? { view: { fromS: viewWindow.fromS, toS, columnCount } } : {}),
+    };
   };
 
   const start = async (kind: Kind) => {
@@ -56,7 +65,10 @@ export function createRunController(store: ScenarioStore, client: EngineClient):
     isBusy = true;
     next = null;
     if (kind === "full") runStarted();
-    const outcome = await client.run(request(document, COLUMNS[kind]), (progress) => isNewest() && kind === "full" && store.getState().runProgressed(progress));
+    const outcome = await client.run(
+      request(document, COLUMNS[kind]),
+      (progress) => isNewest() && kind === "full" && store.getState().runProgressed(progress),
+    );
     timers.forEach(clearTimeout);
     if (!isNewest()) return;
     isBusy = false;
@@ -86,7 +98,9 @@ export function createRunController(store: ScenarioStore, client: EngineClient):
 
   const coversWindow = (): boolean => {
     const { shown, viewWindow } = store.getState();
-    return shown !== null && !shown.isCoarse && shown.view.fromS === viewWindow.fromS && shown.view.toS === viewWindow.toS;
+    return (
+      shown !== null && !shown.isCoarse && shown.view.fromS === viewWindow.fromS && shown.view.toS === viewWindow.toS
+    );
   };
   const views = newestOnly(async () => {
     const { shown, viewWindow } = store.getState();

@@ -35,7 +35,10 @@ export function RunRegion() {
         </div>
       </div>
       <div className={styles.lanes}>
-        <Lanes shown={shown} onTogglePlay={() => region.current?.querySelector<HTMLButtonElement>(PLAY_BUTTON)?.click()} />
+        <Lanes
+          shown={shown}
+          onTogglePlay={() => region.current?.querySelector<HTMLButtonElement>(PLAY_BUTTON)?.click()}
+        />
       </div>
     </div>
   );
@@ -48,7 +51,13 @@ export function NoRunYet() {
   const phase = useScenario((state) => state.run.phase);
   return (
     <div className={styles.empty}>
-      <p className={styles.serif}>{phase === "failed" ? "There is no run to show." : phase === "stale" ? "The run was cancelled." : "The first run is on its way."}</p>
+      <p className={styles.serif}>
+        {phase === "failed"
+          ? "There is no run to show."
+          : phase === "stale"
+            ? "The run was cancelled."
+            : "The first run is on its way."}
+      </p>
     </div>
   );
 }
@@ -58,7 +67,16 @@ type Part = { shown: ShownRun };
 export function Steps({ shown, isPhone = false }: Part & { isPhone?: boolean }) {
   const { store } = useWorkbench();
   const cursorS = useScenario((state) => state.cursorS);
-  return <StepBar view={shown.view} simulation={shown.simulation} document={shown.document} cursorS={cursorS} onCursor={(timeS) => store.getState().goTo(timeS)} isPhone={isPhone} />;
+  return (
+    <StepBar
+      view={shown.view}
+      simulation={shown.simulation}
+      document={shown.document}
+      cursorS={cursorS}
+      onCursor={(timeS) => store.getState().goTo(timeS)}
+      isPhone={isPhone}
+    />
+  );
 }
 
 export function Overview({ shown }: Part) {
@@ -66,13 +84,33 @@ export function Overview({ shown }: Part) {
   const cursorS = useScenario((state) => state.cursorS);
   const viewWindow = useScenario((state) => state.viewWindow);
   const theme = useThemeName();
-  return <RunOverview overview={shown.overview} simulation={shown.simulation} document={shown.document} cursorS={cursorS} onCursor={(timeS) => store.getState().goTo(timeS)} viewWindow={viewWindow} onViewWindow={(next) => store.getState().setViewWindow(next)} theme={theme} />;
+  return (
+    <RunOverview
+      overview={shown.overview}
+      simulation={shown.simulation}
+      document={shown.document}
+      cursorS={cursorS}
+      onCursor={(timeS) => store.getState().goTo(timeS)}
+      viewWindow={viewWindow}
+      onViewWindow={(next) => store.getState().setViewWindow(next)}
+      theme={theme}
+    />
+  );
 }
 
 function Events({ shown }: Part) {
   const { store } = useWorkbench();
   const cursorS = useScenario((state) => state.cursorS);
-  return <EventsTable view={shown.view} overview={shown.overview} simulation={shown.simulation} document={shown.document} cursorS={cursorS} onCursor={(timeS) => store.getState().goTo(timeS)} />;
+  return (
+    <EventsTable
+      view={shown.view}
+      overview={shown.overview}
+      simulation={shown.simulation}
+      document={shown.document}
+      cursorS={cursorS}
+      onCursor={(timeS) => store.getState().goTo(timeS)}
+    />
+  );
 }
 
 /** The largest current of the run: the widest ribbon. */
@@ -91,7 +129,15 @@ export function BridgeNow({ shown, isPhone = false }: Part & { isPhone?: boolean
   const idealV = valueAt(shown.view, "idealV", reading.timeS);
   return (
     <div className={styles.bridge}>
-      <Bridge reading={reading} band={bandAt(shown.view.bands, reading.timeS)} document={shown.document} fullScaleA={fullScaleA} idealV={idealV} isPhone={isPhone} isStale={isStale} />
+      <Bridge
+        reading={reading}
+        band={bandAt(shown.view.bands, reading.timeS)}
+        document={shown.document}
+        fullScaleA={fullScaleA}
+        idealV={idealV}
+        isPhone={isPhone}
+        isStale={isStale}
+      />
     </div>
   );
 }
@@ -99,12 +145,19 @@ export function BridgeNow({ shown, isPhone = false }: Part & { isPhone?: boolean
 export function StripNow({ shown }: Part) {
   const reading = useScenario((state) => state.reading);
   if (!reading) return null;
-  return <ReadingStrip reading={reading} document={shown.document} idealV={valueAt(shown.view, "idealV", reading.timeS)} />;
+  return (
+    <ReadingStrip reading={reading} document={shown.document} idealV={valueAt(shown.view, "idealV", reading.timeS)} />
+  );
 }
 
 /** The last run fades when a newer one takes long, failed or was cancelled. */
 function useIsStale(): boolean {
-  return useScenario((state) => (state.run.phase === "recomputing" && state.run.isSlow) || state.run.phase === "failed" || state.run.phase === "stale");
+  return useScenario(
+    (state) =>
+      (state.run.phase === "recomputing" && state.run.isSlow) ||
+      state.run.phase === "failed" ||
+      state.run.phase === "stale",
+  );
 }
 
 type LanesProps = Part & { lanes?: readonly LaneId[]; heightPx?: number; onTogglePlay?: () => void };

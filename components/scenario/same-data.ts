@@ -3,7 +3,8 @@
 type Tree = Record<string, unknown> | unknown[];
 
 const isTree = (value: unknown): value is Tree => typeof value === "object" && value !== null;
-const childOf = (tree: Tree, key: string): unknown => (Object.hasOwn(tree, key) ? (tree as Record<string, unknown>)[key] : undefined);
+const childOf = (tree: Tree, key: string): unknown =>
+  Object.hasOwn(tree, key) ? (tree as Record<string, unknown>)[key] : undefined;
 
 /** A field that is `undefined` counts as left out. */
 export function isSameData(one: unknown, other: unknown): boolean {

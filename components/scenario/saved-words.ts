@@ -11,7 +11,14 @@ export function formatMoment(atMs: number, nowMs: number): string {
   return dayOfYear.format(at);
 }
 
-type SavedFacts = { number: number; savedAtMs: number; changeCount: number; isOffline: boolean; mode: "edit" | "read" | "guest"; nowMs: number };
+type SavedFacts = {
+  number: number;
+  savedAtMs: number;
+  changeCount: number;
+  isOffline: boolean;
+  mode: "edit" | "read" | "guest";
+  nowMs: number;
+};
 
 /** What is saved and what is not, always said: "rev 7 · saved 14:02", "rev 7 · 3 changes not saved", "Working here; not saved since 14:02". */
 export function savedWords({ number, savedAtMs, changeCount, isOffline, mode, nowMs }: SavedFacts): string {

@@ -19,7 +19,11 @@ export async function reach<T>(call: () => Promise<Result<T>>): Promise<Result<T
 }
 
 /** Saves the draft on top of the revision it started from. Edits made while it is on its way stay unsaved. */
-export async function saveDraft(store: ScenarioStore, actions: Partial<ScenarioActions>, message: string): Promise<boolean> {
+export async function saveDraft(
+  store: ScenarioStore,
+  actions: Partial<ScenarioActions>,
+  message: string,
+): Promise<boolean> {
   const { scenarioId, document, base, save, personId } = store.getState();
   const { saveRevision } = actions;
   if (scenarioId === null || personId === null || !saveRevision || save.isSaving) return false;
@@ -51,17 +55,30 @@ function settle(store: ScenarioStore, result: Result<SavedNumber>, document: unk
     const parsed = parseScenario(document);
     if (!parsed.ok) throw new Error("a document was saved that the schema refuses");
     // the draft's own object stays the base, so that "unsaved" compares by identity first
-    state.saveDone({ number: result.value.number, document: state.document === document ? state.document : parsed.document, savedAtMs: Date.now(), authorName: "you" });
+    state.saveDone({
+      number: result.value.number,
+      document: state.document === document ? state.document : parsed.document,
+      savedAtMs: Date.now(),
+      authorName: "you",
+    });
     state.say(`Saved as rev ${result.value.number}`);
     return true;
   }
   const conflict = result.code === "edit.conflict" ? readConflict(result.detail, message) : null;
   if (conflict) state.saveConflicted(conflict);
-  else state.saveFailed({ code: result.code, text: describe(result.code, result.findings?.map((finding) => `${finding.path}: ${finding.text}`)) });
+  else
+    state.saveFailed({
+      code: result.code,
+      text: describe(
+        result.code,
+        result.findings?.map((finding) => `${finding.path}: ${finding.text}`),
+      ),
+    });
   return false;
 }
 
-const describe = (code: ErrorCode, findings: string[] | undefined): string => [errorText(code), ...(findings ?? []).slice(0, 3)].join(" ");
+const describe = (code: ErrorCode, findings: string[] | undefined): string =>
+  [errorText(code), ...(findings ?? []).slice(0, 3)].join(" ");
 
 /** `detail` of `edit.conflict` (lib/server/deeds/revisions.ts). Dates cross the action as Date or as text. */
 export function readConflict(detail: unknown, message: string): Conflict | null {
@@ -71,7 +88,12 @@ export function readConflict(detail: unknown, message: string): Conflict | null 
   const [theirs, mine] = [parseScenario(newest.document), parseScenario(kept.document)];
   if (!theirs.ok || !mine.ok) return null;
   return {
-    newest: { number: newest.number, authorName: newest.authorName, createdAtMs: new Date(newest.createdAt).getTime(), document: theirs.document },
+    newest: {
+      number: newest.number,
+      authorName: newest.authorName,
+      createdAtMs: new Date(newest.createdAt).getTime(),
+      document: theirs.document,
+    },
     mine: { draftId: kept.draftId, document: mine.document },
     message,
   };

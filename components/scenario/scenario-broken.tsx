@@ -1,7 +1,6 @@
 "use client";
 
 import Link from "next/link";
-import controls from "./controls.module.css";
 import styles from "./run.module.css";
 
 /** What, why, and two ways out. */
@@ -15,10 +14,10 @@ export function ScenarioBroken({ digest, onRetry }: { digest: string | undefined
       </p>
       {digest && <p className={styles.digest}>Reference {digest}</p>}
       <p className={styles.ways}>
-        <button type="button" className={`${controls.button} ${controls.primary}`} onClick={onRetry}>
+        <button type="button" className="button" data-kind="primary" onClick={onRetry}>
           Try again
         </button>
-        <Link className={controls.button} href="/scenarios">
+        <Link className="button" href="/scenarios">
           Go to the scenarios
         </Link>
       </p>

@@ -45,10 +45,20 @@ export type RunStatus = {
 };
 
 /** A run as it is shown. `document` is the one it was computed from: the drawings go with it, not with the draft. */
-export type ShownRun = { simulation: Simulation; view: View; overview: View; document: ScenarioDocument; isCoarse: boolean };
+export type ShownRun = {
+  simulation: Simulation;
+  view: View;
+  overview: View;
+  document: ScenarioDocument;
+  isCoarse: boolean;
+};
 
 export type NewestRevision = { number: number; authorName: string; createdAtMs: number; document: ScenarioDocument };
-export type Conflict = { newest: NewestRevision; mine: { draftId: string; document: ScenarioDocument }; message: string };
+export type Conflict = {
+  newest: NewestRevision;
+  mine: { draftId: string; document: ScenarioDocument };
+  message: string;
+};
 
 export type RestoredDraft = { keptAtMs: number; baseNumber: number; document: ScenarioDocument };
 

@@ -34,9 +34,20 @@ export type ScenarioWorkbenchProps = {
 };
 
 /** The whole job on one page: inputs, bridge, waveforms, figures and notices, live as values change. */
-export function ScenarioWorkbench({ initial, actions, createClient = createEngineClient, storage, ...rest }: ScenarioWorkbenchProps) {
+export function ScenarioWorkbench({
+  initial,
+  actions,
+  createClient = createEngineClient,
+  storage,
+  ...rest
+}: ScenarioWorkbenchProps) {
   return (
-    <ScenarioProvider initial={initial} createClient={createClient} {...(actions ? { actions } : {})} {...(storage ? { storage } : {})}>
+    <ScenarioProvider
+      initial={initial}
+      createClient={createClient}
+      {...(actions ? { actions } : {})}
+      {...(storage ? { storage } : {})}
+    >
       <Workbench {...rest} />
     </ScenarioProvider>
   );
@@ -51,7 +62,13 @@ function Workbench({ state = null, mayDuplicate = false, isArchived = false, sha
   usePageKeys(root, opened, setOpened);
   return (
     <div ref={root} className={styles.workbench} data-layout={layout}>
-      <WorkbenchHead state={state} onOpen={setOpened} mayDuplicate={mayDuplicate} share={share} isPhone={layout === "phone"} />
+      <WorkbenchHead
+        state={state}
+        onOpen={setOpened}
+        mayDuplicate={mayDuplicate}
+        share={share}
+        isPhone={layout === "phone"}
+      />
       <ProgressBorder />
       <div className={styles.banners}>
         <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} isArchived={isArchived} />

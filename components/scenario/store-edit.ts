@@ -46,12 +46,25 @@ export function editActions(set: SetState, get: GetState): EditActions {
   const turn = (made: Turn | null, word: string) => {
     if (!made) return;
     const state = get();
-    set({ ...withDocument(state, made.document), history: made.history, gesture: null, dragStart: null, refusedText: {} });
+    set({
+      ...withDocument(state, made.document),
+      history: made.history,
+      gesture: null,
+      dragStart: null,
+      refusedText: {},
+    });
     get().say(`${word}: ${made.label}`);
   };
   /** A change that pulled others along says so: nothing in the document changes unseen. */
   const tellAlso = ({ alsoChanged }: AppliedChange) => {
-    if (alsoChanged.length > 0) get().say(`Changed along with it: ${alsoChanged.slice(0, 3).map((one) => one.text).join("; ")}`, true);
+    if (alsoChanged.length > 0)
+      get().say(
+        `Changed along with it: ${alsoChanged
+          .slice(0, 3)
+          .map((one) => one.text)
+          .join("; ")}`,
+        true,
+      );
   };
   return {
     change: (path, value) => {
@@ -94,12 +107,18 @@ export function editActions(set: SetState, get: GetState): EditActions {
       const state = get();
       if (state.gesture?.path === path) return;
       get().refuseText(path, null);
-      set({ gesture: { path, before: state.document, figures: state.shown?.simulation.figures ?? null }, dragStart: null });
+      set({
+        gesture: { path, before: state.document, figures: state.shown?.simulation.figures ?? null },
+        dragStart: null,
+      });
     },
     drag: (path, value) => {
       const state = get();
       if (getAt(state.document, path) === value) return;
-      set({ ...withDocument(state, applyChange(state.document, path, value).document), save: { ...state.save, problem: null } });
+      set({
+        ...withDocument(state, applyChange(state.document, path, value).document),
+        save: { ...state.save, problem: null },
+      });
     },
     endDrag: () => {
       const state = get();
@@ -109,7 +128,11 @@ export function editActions(set: SetState, get: GetState): EditActions {
       if (isSameData(gesture.before, document)) return;
       const before = getAt(gesture.before, gesture.path);
       set({
-        history: pushEdit(state.history, { label: editLabel(gesture.path, gesture.before, document), before: gesture.before, after: document }),
+        history: pushEdit(state.history, {
+          label: editLabel(gesture.path, gesture.before, document),
+          before: gesture.before,
+          after: document,
+        }),
         dragStart: typeof before === "number" ? { path: gesture.path, value: before } : null,
       });
     },

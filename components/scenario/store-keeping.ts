@@ -35,7 +35,12 @@ export function keepingActions(set: SetState, get: GetState): KeepingActions {
   const step = (after: ScenarioDocument, label: string) => {
     const state = get();
     if (isSameData(after, state.document)) return;
-    set({ ...withDocument(state, after), history: pushEdit(state.history, { label, before: state.document, after }), refusedText: {}, dragStart: null });
+    set({
+      ...withDocument(state, after),
+      history: pushEdit(state.history, { label, before: state.document, after }),
+      refusedText: {},
+      dragStart: null,
+    });
   };
   return {
     saveStarted: () => setSave({ isSaving: true, problem: null }),
@@ -43,7 +48,8 @@ export function keepingActions(set: SetState, get: GetState): KeepingActions {
       set({ base: saved, newest: saved });
       setSave({ isSaving: false, problem: null, conflict: null, restored: null, isOffline: false });
     },
-    saveFailed: (problem) => setSave({ isSaving: false, problem, isOffline: problem.code === "server.unreachable" || get().save.isOffline }),
+    saveFailed: (problem) =>
+      setSave({ isSaving: false, problem, isOffline: problem.code === "server.unreachable" || get().save.isOffline }),
     saveConflicted: (conflict) => setSave({ isSaving: false, problem: null, conflict, isOffline: false }),
     takeTheirs: () => {
       const { conflict } = get().save;

@@ -45,19 +45,35 @@ export function runActions(set: SetState, get: GetState): RunActions {
       const { run } = get();
       if (failure.code === "engine.superseded") return;
       if (failure.code === "engine.cancelled") set({ run: { ...run, ...calm, phase: "stale" } });
-      else if (failure.code === "input.invalid") set({ run: { ...run, ...calm, phase: "stale" }, findings: failure.findings });
-      else set({ run: { ...run, ...calm, phase: "failed", problem: { title: "The run did not finish", text: failure.code === "engine.failed" ? failure.text : "There is no run to read from yet." } } });
+      else if (failure.code === "input.invalid")
+        set({ run: { ...run, ...calm, phase: "stale" }, findings: failure.findings });
+      else
+        set({
+          run: {
+            ...run,
+            ...calm,
+            phase: "failed",
+            problem: {
+              title: "The run did not finish",
+              text: failure.code === "engine.failed" ? failure.text : "There is no run to read from yet.",
+            },
+          },
+        });
     },
     viewArrived: (view) => {
       const { shown } = get();
       if (shown) set({ shown: { ...shown, view, isCoarse: false } });
     },
     readingArrived: (reading) => set({ reading }),
-    setCursor: (timeS) => set({ cursorS: clampTo(timeS, get().shown?.simulation.durationS ?? get().document.run.durationS) }),
+    setCursor: (timeS) =>
+      set({ cursorS: clampTo(timeS, get().shown?.simulation.durationS ?? get().document.run.durationS) }),
     goTo: (timeS) => {
       const { viewWindow, shown, document } = get();
       const durationS = shown?.simulation.durationS ?? document.run.durationS;
-      set({ cursorS: clampTo(timeS, durationS), viewWindow: revealTime(viewWindow, clampTo(timeS, durationS), durationS) });
+      set({
+        cursorS: clampTo(timeS, durationS),
+        viewWindow: revealTime(viewWindow, clampTo(timeS, durationS), durationS),
+      });
     },
     setPin: (pinS) => set({ pinS }),
     setViewWindow: (viewWindow) => set({ viewWindow }),
@@ -69,7 +85,15 @@ export function runActions(set: SetState, get: GetState): RunActions {
 const clampTo = (timeS: number, durationS: number): number => Math.min(durationS, Math.max(0, timeS));
 
 /** A shorter run than the one before pulls cursor, pin and window inside; a longer one leaves them, unless the whole run was shown. */
-function fitPlace(state: { cursorS: number; pinS: number | null; viewWindow: TimeWindow; shown: { simulation: { durationS: number } } | null }, durationS: number) {
+function fitPlace(
+  state: {
+    cursorS: number;
+    pinS: number | null;
+    viewWindow: TimeWindow;
+    shown: { simulation: { durationS: number } } | null;
+  },
+  durationS: number,
+) {
   const { viewWindow, pinS } = state;
   const wasWhole = viewWindow.fromS === 0 && viewWindow.toS === state.shown?.simulation.durationS;
   const lengthS = Math.min(viewWindow.toS - viewWindow.fromS, durationS);

@@ -13,7 +13,8 @@ function subscribe(onChange: () => void): () => void {
   return () => lists.forEach((list) => list?.removeEventListener("change", onChange));
 }
 
-const readLayout = (): Layout => (window.matchMedia?.(PHONE).matches ? "phone" : window.matchMedia?.(NARROW).matches ? "narrow" : "wide");
+const readLayout = (): Layout =>
+  window.matchMedia?.(PHONE).matches ? "phone" : window.matchMedia?.(NARROW).matches ? "narrow" : "wide";
 
 /** look.md section 4: below 1100 px the right column becomes a tab, below 720 px the page is a phone's. */
 export const useLayout = (): Layout => useSyncExternalStore(subscribe, readLayout, () => "wide");

@@ -5,12 +5,18 @@ import { isDirty } from "./checked-document";
 import { useWorkbench } from "./provider";
 import type { Opened } from "./workbench-dialogs";
 
-const isTyping = (target: EventTarget | null): boolean => target instanceof HTMLElement && target.closest("input, select, textarea, [contenteditable]") !== null;
+const isTyping = (target: EventTarget | null): boolean =>
+  target instanceof HTMLElement && target.closest("input, select, textarea, [contenteditable]") !== null;
 /** A text field that holds something not taken yet undoes its own typing. */
-const isPending = (target: EventTarget | null): boolean => target instanceof HTMLElement && target.closest("[data-pending], textarea, [role=dialog]") !== null;
+const isPending = (target: EventTarget | null): boolean =>
+  target instanceof HTMLElement && target.closest("[data-pending], textarea, [role=dialog]") !== null;
 
 /** Keys that act wherever the focus is: undo, redo, save, run again, the map of keys, the next region. */
-export function usePageKeys(root: RefObject<HTMLElement | null>, opened: Opened | null, onOpen: (dialog: Opened) => void): void {
+export function usePageKeys(
+  root: RefObject<HTMLElement | null>,
+  opened: Opened | null,
+  onOpen: (dialog: Opened) => void,
+): void {
   const { store, runNow, cancelRun } = useWorkbench();
   const latest = useRef({ opened, onOpen });
   useEffect(() => {
@@ -41,7 +47,9 @@ export function usePageKeys(root: RefObject<HTMLElement | null>, opened: Opened 
 
 /** F6 goes round the regions that are in sight. */
 function focusNextRegion(root: HTMLElement | null, direction: 1 | -1): void {
-  const regions = [...(root?.querySelectorAll<HTMLElement>("[data-region]") ?? [])].filter((region) => !region.closest("[hidden]"));
+  const regions = [...(root?.querySelectorAll<HTMLElement>("[data-region]") ?? [])].filter(
+    (region) => !region.closest("[hidden]"),
+  );
   if (regions.length === 0) return;
   const at = regions.findIndex((region) => region.contains(document.activeElement));
   const next = at < 0 ? (direction === 1 ? 0 : regions.length - 1) : (at + direction + regions.length) % regions.length;

@@ -14,7 +14,12 @@ export function Why({ name, children }: { name: FigureName; children: ReactNode 
   return (
     <Tooltip.Root>
       <Tooltip.Trigger asChild>
-        <button type="button" className={styles.why} aria-pressed={isPinned} onClick={() => store.getState().pinFigure(isPinned ? null : name)}>
+        <button
+          type="button"
+          className={styles.why}
+          aria-pressed={isPinned}
+          onClick={() => store.getState().pinFigure(isPinned ? null : name)}
+        >
           {children}
         </button>
       </Tooltip.Trigger>

@@ -5,7 +5,7 @@ import styles from "./workbench.module.css";
 export function WorkbenchFrame() {
   return (
     <div className={styles.workbench} aria-busy="true">
-      <p className="sr" role="status">
+      <p className="visually-hidden" role="status">
         Opening the scenario
       </p>
       <div className={styles.subhead} aria-hidden="true" />

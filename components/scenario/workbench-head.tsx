@@ -9,13 +9,23 @@ import { savedWords } from "./saved-words";
 import { useNow } from "./use-now";
 import { RunWords } from "./workbench-foot";
 import type { Opened } from "./workbench-dialogs";
-import controls from "./controls.module.css";
 import styles from "./workbench.module.css";
 
 type State = ScenarioView["state"];
-const STATE_WORDS: Record<State, string> = { draft: "Draft", inReview: "In review", approved: "Approved", superseded: "Superseded" };
+const STATE_WORDS: Record<State, string> = {
+  draft: "Draft",
+  inReview: "In review",
+  approved: "Approved",
+  superseded: "Superseded",
+};
 
-type Props = { state: State | null; onOpen: (dialog: Opened) => void; share?: ReactNode; mayDuplicate: boolean; isPhone: boolean };
+type Props = {
+  state: State | null;
+  onOpen: (dialog: Opened) => void;
+  share?: ReactNode;
+  mayDuplicate: boolean;
+  isPhone: boolean;
+};
 
 /** Sub-head: title, state, what is saved and what is not, undo and redo, save. */
 export function WorkbenchHead({ state, onOpen, share, mayDuplicate, isPhone }: Props) {
@@ -28,7 +38,7 @@ export function WorkbenchHead({ state, onOpen, share, mayDuplicate, isPhone }: P
       </h1>
       <div className={styles.facts}>
         {state && (
-          <span className={styles.state} data-state={state}>
+          <span className="state" data-state={state}>
             {STATE_WORDS[state]}
           </span>
         )}
@@ -64,7 +74,11 @@ export function SavedState() {
   const nowMs = useNow();
   return (
     <span className={styles.saved} data-unsaved={changeCount > 0 || undefined} role="status">
-      {isSaving ? "Saving …" : nowMs === null ? `rev ${number}` : savedWords({ number, savedAtMs, changeCount, isOffline, mode, nowMs })}
+      {isSaving
+        ? "Saving …"
+        : nowMs === null
+          ? `rev ${number}`
+          : savedWords({ number, savedAtMs, changeCount, isOffline, mode, nowMs })}
     </span>
   );
 }
@@ -77,14 +91,40 @@ function UndoButtons() {
   const redoText = redo === undefined ? "Redo" : `Redo: ${redo}`;
   return (
     <>
-      <button type="button" className={`${controls.button} ${controls.quiet} ${controls.square}`} disabled={undo === undefined} aria-label={undoText} title={undoText} onClick={() => store.getState().undo()}>
+      <button
+        type="button"
+        className="button"
+        data-kind="quiet"
+        disabled={undo === undefined}
+        aria-label={undoText}
+        title={undoText}
+        onClick={() => store.getState().undo()}
+      >
         <svg width="15" height="12" viewBox="0 0 15 12" aria-hidden="true">
-          <path d="M5 1 1.5 4.3 5 7.6M2 4.3H9.5C15 4.3 15 11 9.5 11H7" fill="none" stroke="currentColor" strokeWidth="1.5" />
+          <path
+            d="M5 1 1.5 4.3 5 7.6M2 4.3H9.5C15 4.3 15 11 9.5 11H7"
+            fill="none"
+            stroke="currentColor"
+            strokeWidth="1.5"
+          />
         </svg>
       </button>
-      <button type="button" className={`${controls.button} ${controls.quiet} ${controls.square}`} disabled={redo === undefined} aria-label={redoText} title={redoText} onClick={() => store.getState().redo()}>
+      <button
+        type="button"
+        className="button"
+        data-kind="quiet"
+        disabled={redo === undefined}
+        aria-label={redoText}
+        title={redoText}
+        onClick={() => store.getState().redo()}
+      >
         <svg width="15" height="12" viewBox="0 0 15 12" aria-hidden="true">
-          <path d="M10 1 13.5 4.3 10 7.6M13 4.3H5.5C0 4.3 0 11 5.5 11H8" fill="none" stroke="currentColor" strokeWidth="1.5" />
+          <path
+            d="M10 1 13.5 4.3 10 7.6M13 4.3H5.5C0 4.3 0 11 5.5 11H8"
+            fill="none"
+            stroke="currentColor"
+            strokeWidth="1.5"
+          />
         </svg>
       </button>
     </>
@@ -98,16 +138,22 @@ function SaveButton({ onOpen }: { onOpen: (dialog: Opened) => void }) {
   const isLocked = useScenario((state) => state.isLocked);
   const number = useScenario((state) => state.base.number);
   const hasConflict = useScenario((state) => state.save.conflict !== null);
-  const primary = `${controls.button} ${controls.primary}`;
   if (isLocked) {
     return (
-      <button type="button" className={primary} onClick={() => store.getState().unlock()}>
+      <button type="button" className="button" data-kind="primary" onClick={() => store.getState().unlock()}>
         Start rev {number + 1}
       </button>
     );
   }
   return (
-    <button type="button" className={primary} aria-label={hasConflict ? "Compare" : "Save revision"} disabled={changeCount === 0} onClick={() => onOpen(hasConflict ? "conflict" : "save")}>
+    <button
+      type="button"
+      className="button"
+      data-kind="primary"
+      aria-label={hasConflict ? "Compare" : "Save revision"}
+      disabled={changeCount === 0}
+      onClick={() => onOpen(hasConflict ? "conflict" : "save")}
+    >
       <span>
         {hasConflict ? "Compare" : "Save"}
         {!hasConflict && <span className={styles.longWord}> revision</span>}

@@ -40,7 +40,10 @@ export type QuantityFieldProps = {
 
 export function QuantityField(props: QuantityFieldProps) {
   const { value, shape, onTake, onStep = onTake, refusedText = null, onRefuse, keeper = "The run", problem } = props;
-  const shown = value === null ? { ...writeQuantity(0, shape), number: "", text: props.placeholder ?? "no value" } : writeQuantity(value, shape);
+  const shown =
+    value === null
+      ? { ...writeQuantity(0, shape), number: "", text: props.placeholder ?? "no value" }
+      : writeQuantity(value, shape);
   const [typed, setTyped] = useState<string | null>(null);
   const [isTouched, setTouched] = useState(false);
   // Escape on the way out must not take what the blur still sees
@@ -95,7 +98,13 @@ export function QuantityField(props: QuantityFieldProps) {
       restore(input);
       event.stopPropagation();
     } else if ((event.key === "ArrowUp" || event.key === "ArrowDown") && !event.ctrlKey && !event.metaKey) {
-      move(props.stepBy(startOf(reading, value), event.key === "ArrowUp" ? 1 : -1, event.shiftKey ? 10 : event.altKey ? 0.1 : 1));
+      move(
+        props.stepBy(
+          startOf(reading, value),
+          event.key === "ArrowUp" ? 1 : -1,
+          event.shiftKey ? 10 : event.altKey ? 0.1 : 1,
+        ),
+      );
     } else if (event.key === "PageUp" || event.key === "PageDown") {
       move(props.pageBy(startOf(reading, value), event.key === "PageUp" ? 1 : -1));
     } else return;
@@ -112,7 +121,12 @@ export function QuantityField(props: QuantityFieldProps) {
 
   return (
     <>
-      <span className={`${styles.field} ${props.className ?? ""}`} data-fault={isRefused || problem !== undefined || undefined} data-pending={(typed !== null && isTouched) || undefined} data-disabled={props.isDisabled || undefined}>
+      <span
+        className={`${styles.field} ${props.className ?? ""}`}
+        data-fault={isRefused || problem !== undefined || undefined}
+        data-pending={(typed !== null && isTouched) || undefined}
+        data-disabled={props.isDisabled || undefined}
+      >
         <input
           id={props.id}
           type="text"
@@ -134,10 +148,15 @@ export function QuantityField(props: QuantityFieldProps) {
           onFocus={onFocus}
           onBlur={onBlur}
         />
-        <span className={styles.unit}>{isPending && reading?.ok ? "" : shown.unit}</span>
+        <span className={styles.unit}>{isPending && hasLetters(text) ? "" : shown.unit}</span>
       </span>
       {line && (
-        <span id={lineId} className={styles.line} data-fault={line.isFault || undefined} role={line.isFault ? "alert" : undefined}>
+        <span
+          id={lineId}
+          className={styles.line}
+          data-fault={line.isFault || undefined}
+          role={line.isFault ? "alert" : undefined}
+        >
           {line.text}
         </span>
       )}
@@ -145,15 +164,29 @@ export function QuantityField(props: QuantityFieldProps) {
   );
 }
 
-const startOf = (reading: ReturnType<typeof readQuantity> | null, value: number | null): number => (reading?.ok ? reading.value : (value ?? 0));
+/** A unit or prefix was typed along: the one beside the field would contradict it. */
+const hasLetters = (text: string): boolean => /[^\d.,+\-\u2212eE\s]/.test(text);
 
-type LineInput = { reading: ReturnType<typeof readQuantity> | null; isRefused: boolean; problem: string | undefined; kept: string };
+const startOf = (reading: ReturnType<typeof readQuantity> | null, value: number | null): number =>
+  reading?.ok ? reading.value : (value ?? 0);
+
+type LineInput = {
+  reading: ReturnType<typeof readQuantity> | null;
+  isRefused: boolean;
+  problem: string | undefined;
+  kept: string;
+};
 
 /** The line under the field: how it will be read, why it is not taken, or what is wrong between fields. */
 function lineOf({ reading, isRefused, problem, kept }: LineInput): { text: string; isFault: boolean } | null {
   if (isRefused && reading && !reading.ok) return { text: `${reading.text} ${kept}`, isFault: true };
-  if (reading?.ok) return { text: [`Will read as ${reading.reading}.`, reading.note].filter(Boolean).join(" "), isFault: false };
+  if (reading?.ok)
+    return { text: [`Will read as ${reading.reading}.`, reading.note].filter(Boolean).join(" "), isFault: false };
   if (reading && reading.code === "range") return { text: reading.text, isFault: false };
-  if (reading) return { text: reading.code === "empty" ? "Enter a number. Escape puts the old one back." : reading.text, isFault: false };
+  if (reading)
+    return {
+      text: reading.code === "empty" ? "Enter a number. Escape puts the old one back." : reading.text,
+      isFault: false,
+    };
   return problem === undefined ? null : { text: problem, isFault: true };
 }

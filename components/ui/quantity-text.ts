@@ -14,7 +14,8 @@ export type QuantityShape = {
 const DIGITS = 6;
 
 /** Number and unit as the field shows them. */
-export const writeQuantity = (value: number, shape: Pick<QuantityShape, "unit">) => formatQuantity(value, shape.unit, { digits: DIGITS });
+export const writeQuantity = (value: number, shape: Pick<QuantityShape, "unit">) =>
+  formatQuantity(value, shape.unit, { digits: DIGITS });
 
 /** The range in words: "0 s to 12 µs"; an open end says "below". */
 export function writeRange(shape: QuantityShape): string {
@@ -26,8 +27,15 @@ export function writeRange(shape: QuantityShape): string {
 export function readQuantity(text: string, shape: QuantityShape, prefix: string): ParsedQuantity {
   const parsed = parseQuantity(text, shape.unit, { displayPrefix: prefix, range: { min: shape.min, max: shape.max } });
   if (!parsed.ok) return parsed;
-  const refuse = (text: string, code: "range" | "number"): ParsedQuantity => ({ ok: false, code, text, value: parsed.value });
-  if (shape.isMaxOpen && parsed.value >= shape.max) return refuse(`${parsed.reading} is outside ${writeRange(shape)}.`, "range");
-  if (shape.isWhole && !Number.isInteger(parsed.value)) return refuse(`${parsed.reading} is not a whole number.`, "number");
+  const refuse = (text: string, code: "range" | "number"): ParsedQuantity => ({
+    ok: false,
+    code,
+    text,
+    value: parsed.value,
+  });
+  if (shape.isMaxOpen && parsed.value >= shape.max)
+    return refuse(`${parsed.reading} is outside ${writeRange(shape)}.`, "range");
+  if (shape.isWhole && !Number.isInteger(parsed.value))
+    return refuse(`${parsed.reading} is not a whole number.`, "number");
   return parsed;
 }

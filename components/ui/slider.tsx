@@ -90,11 +90,20 @@ export function Slider(props: SliderProps) {
   };
 
   return (
-    <div className={styles.slider} data-dragging={isDragging || undefined} onPointerDown={onPointerDown} onPointerMove={onPointerMove} onPointerUp={() => finish(true)} onPointerCancel={() => finish(false)}>
+    <div
+      className={styles.slider}
+      data-dragging={isDragging || undefined}
+      onPointerDown={onPointerDown}
+      onPointerMove={onPointerMove}
+      onPointerUp={() => finish(true)}
+      onPointerCancel={() => finish(false)}
+    >
       <div ref={track} className={styles.track}>
         {isDragging && props.ticks.map((at) => <span key={at} className={styles.tick} style={{ left: percent(at) }} />)}
         <span className={styles.filled} style={{ width: percent(position) }} />
-        {startPosition !== null && startPosition !== undefined && <span className={styles.start} style={{ left: percent(startPosition) }} />}
+        {startPosition !== null && startPosition !== undefined && (
+          <span className={styles.start} style={{ left: percent(startPosition) }} />
+        )}
         <div
           role="slider"
           tabIndex={0}

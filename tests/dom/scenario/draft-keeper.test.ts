@@ -39,7 +39,10 @@ describe("the draft kept in this browser", () => {
     first.store.getState().change(SHUNT, 0.02);
     first.end();
     const newer = shortDocument((document) => (document.sensing.amplifier.gain = { fixed: 23 }));
-    const { store } = await openPage(storage, initialOf(newer, { base: { ...initial.base, number: 8, document: newer } }));
+    const { store } = await openPage(
+      storage,
+      initialOf(newer, { base: { ...initial.base, number: 8, document: newer } }),
+    );
     expect(store.getState().base.number).toBe(7);
     expect(store.getState().newest.number).toBe(8);
     store.getState().discardRestored();

@@ -41,7 +41,17 @@ describe("the inputs panel", () => {
     const { store } = renderScenario(<InputsPanel />);
     const slider = screen.getByRole("slider", { name: "Shunt resistance" });
     const track = slider.parentElement!;
-    track.getBoundingClientRect = () => ({ left: 100, width: 240, right: 340, top: 0, bottom: 1, height: 1, x: 100, y: 0, toJSON: () => ({}) });
+    track.getBoundingClientRect = () => ({
+      left: 100,
+      width: 240,
+      right: 340,
+      top: 0,
+      bottom: 1,
+      height: 1,
+      x: 100,
+      y: 0,
+      toJSON: () => ({}),
+    });
     const strip = track.parentElement!;
     fireEvent.pointerDown(strip, { clientX: 230, button: 0, pointerId: 1 });
     fireEvent.pointerMove(strip, { clientX: 260, pointerId: 1 });
@@ -69,7 +79,21 @@ describe("the inputs panel", () => {
 
   it("shows at its field what is wrong between fields", () => {
     const { store } = renderScenario(<InputsPanel />);
-    act(() => store.getState().replaceDocument({ ...store.getState().document, command: { ...store.getState().document.command, points: [{ timeS: 0, duty: 0.5, ramp: "step" }, { timeS: 0, duty: -0.2, ramp: "step" }] } }, "import"));
+    act(() =>
+      store.getState().replaceDocument(
+        {
+          ...store.getState().document,
+          command: {
+            ...store.getState().document.command,
+            points: [
+              { timeS: 0, duty: 0.5, ramp: "step" },
+              { timeS: 0, duty: -0.2, ramp: "step" },
+            ],
+          },
+        },
+        "import",
+      ),
+    );
     expect(store.getState().findings).not.toHaveLength(0);
     const path = store.getState().findings[0]!.path;
     const row = document.querySelector(`[data-path="${path}"]`);

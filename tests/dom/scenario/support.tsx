@@ -1,4 +1,4 @@
-import { render } from "@testing-library/react";
+import { configure, render } from "@testing-library/react";
 import { AppRouterContext, type AppRouterInstance } from "next/dist/shared/lib/app-router-context.shared-runtime";
 import type { ReactNode } from "react";
 import { vi } from "vitest";
@@ -14,11 +14,21 @@ import type { EngineClient } from "@/workers/protocol";
 
 // the first drawing in a cold jsdom on a busy machine takes seconds
 vi.setConfig({ testTimeout: 30_000 });
+configure({ asyncUtilTimeout: 8_000 });
 
 /** Where the page went, instead of going there. */
-export const router = { push: vi.fn(), replace: vi.fn(), refresh: vi.fn(), back: vi.fn(), forward: vi.fn(), prefetch: vi.fn() };
+export const router = {
+  push: vi.fn(),
+  replace: vi.fn(),
+  refresh: vi.fn(),
+  back: vi.fn(),
+  forward: vi.fn(),
+  prefetch: vi.fn(),
+};
 /** Next's navigation as components of the app find it. */
-export const WithRouter = ({ children }: { children: ReactNode }) => <AppRouterContext.Provider value={router as unknown as AppRouterInstance}>{children}</AppRouterContext.Provider>;
+export const WithRouter = ({ children }: { children: ReactNode }) => (
+  <AppRouterContext.Provider value={router as unknown as AppRouterInstance}>{children}</AppRouterContext.Provider>
+);
 
 /** A short run with a reversal, so that a test's run takes milliseconds. */
 export function shortDocument(change: (document: ScenarioDocument) => void = () => undefined): ScenarioDocument {
@@ -47,7 +57,10 @@ export const initialOf = (document: ScenarioDocument, change: Partial<InitialSce
 
 /** The worker's own tasks, called in place: the same engine, without the thread. */
 export function directClient(): EngineClient {
-  const tasks = new EngineTasks(() => new Promise((resolve) => setTimeout(resolve)), () => performance.now());
+  const tasks = new EngineTasks(
+    () => new Promise((resolve) => setTimeout(resolve)),
+    () => performance.now(),
+  );
   return {
     run: (request, onProgress) => tasks.run(request, onProgress),
     view: (request) => Promise.resolve(tasks.view(request)),
@@ -68,7 +81,13 @@ export function memoryStorage(): DraftStorage & { kept: Map<string, KeptInBrowse
   };
 }
 
-type Options = { document?: ScenarioDocument; initial?: Partial<InitialScenario>; actions?: Partial<ScenarioActions>; client?: () => EngineClient; storage?: DraftStorage };
+type Options = {
+  document?: ScenarioDocument;
+  initial?: Partial<InitialScenario>;
+  actions?: Partial<ScenarioActions>;
+  client?: () => EngineClient;
+  storage?: DraftStorage;
+};
 
 /** Draws `children` inside a scenario; `store` is the page's own. */
 export function renderScenario(children: ReactNode, options: Options = {}) {
@@ -80,10 +99,15 @@ export function renderScenario(children: ReactNode, options: Options = {}) {
   const client = options.client ?? directClient;
   const rendered = render(
     <WithRouter>
-    <ScenarioProvider initial={initialOf(options.document ?? shortDocument(), options.initial)} actions={options.actions ?? {}} createClient={client} storage={options.storage ?? memoryStorage()}>
-      <Hold />
-      {children}
-    </ScenarioProvider>
+      <ScenarioProvider
+        initial={initialOf(options.document ?? shortDocument(), options.initial)}
+        actions={options.actions ?? {}}
+        createClient={client}
+        storage={options.storage ?? memoryStorage()}
+      >
+        <Hold />
+        {children}
+      </ScenarioProvider>
     </WithRouter>,
   );
   if (!held.store) throw new Error("no store");

@@ -55,7 +55,10 @@ describe("editing a scenario", () => {
     store.getState().nudge(SHUNT, 0.0133);
     store.getState().nudge(SHUNT, 0.0134);
     store.getState().nudge("bridge.deadTimeS", 8e-7);
-    expect(store.getState().history.past.map((edit) => edit.label)).toEqual(["shunt resistance 13.1 to 13.4 mΩ", "dead time 730 to 800 ns"]);
+    expect(store.getState().history.past.map((edit) => edit.label)).toEqual([
+      "shunt resistance 13.1 to 13.4 mΩ",
+      "dead time 730 to 800 ns",
+    ]);
   });
 
   it("forgets the steps beyond two hundred, the oldest first", () => {

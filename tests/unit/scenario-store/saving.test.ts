@@ -12,15 +12,24 @@ const theirs = () => shortDocument((document) => (document.sensing.amplifier.gai
 
 /** What lib/server/deeds/revisions.ts answers when someone else was first; dates cross as text. */
 const conflictAnswer = (mine: unknown) =>
-  failure("edit.conflict", { detail: { newest: { number: 8, authorName: "Jonas", createdAt: "2026-05-04T14:20:00.000Z", document: theirs() }, kept: { draftId: "draft-1", document: mine } } });
+  failure("edit.conflict", {
+    detail: {
+      newest: { number: 8, authorName: "Jonas", createdAt: "2026-05-04T14:20:00.000Z", document: theirs() },
+      kept: { draftId: "draft-1", document: mine },
+    },
+  });
 
 describe("saving a revision", () => {
   it("saves on top of the revision the draft started from and counts as saved afterwards", async () => {
     const store = makeStore();
     store.getState().change(SHUNT, 0.02);
-    const saveRevision = vi.fn<ScenarioActions["saveRevision"]>().mockResolvedValue(success({ number: 8, revisionId: "r8" }));
+    const saveRevision = vi
+      .fn<ScenarioActions["saveRevision"]>()
+      .mockResolvedValue(success({ number: 8, revisionId: "r8" }));
     expect(await saveDraft(store, { saveRevision }, "larger shunt")).toBe(true);
-    expect(saveRevision).toHaveBeenCalledWith(expect.objectContaining({ baseRevisionNumber: 7, message: "larger shunt" }));
+    expect(saveRevision).toHaveBeenCalledWith(
+      expect.objectContaining({ baseRevisionNumber: 7, message: "larger shunt" }),
+    );
     expect(store.getState().base.number).toBe(8);
     expect(isDirty(store.getState())).toBe(false);
   });
@@ -41,7 +50,9 @@ describe("saving a revision", () => {
     const store = makeStore();
     vi.spyOn(console, "warn").mockImplementation(() => undefined);
     store.getState().change(SHUNT, 0.02);
-    expect(await saveDraft(store, { saveRevision: () => Promise.reject(new TypeError("fetch failed")) }, "")).toBe(false);
+    expect(await saveDraft(store, { saveRevision: () => Promise.reject(new TypeError("fetch failed")) }, "")).toBe(
+      false,
+    );
     expect(store.getState().save.isOffline).toBe(true);
     expect(store.getState().save.problem?.code).toBe("server.unreachable");
     expect(isDirty(store.getState())).toBe(true);
@@ -72,9 +83,13 @@ describe("two people, one draft", () => {
 
   it("keeps mine as a new revision on top of theirs", async () => {
     const { store } = await conflicted();
-    const keepMineAsRevision = vi.fn<ScenarioActions["keepMineAsRevision"]>().mockResolvedValue(success({ number: 9, revisionId: "r9" }));
+    const keepMineAsRevision = vi
+      .fn<ScenarioActions["keepMineAsRevision"]>()
+      .mockResolvedValue(success({ number: 9, revisionId: "r9" }));
     expect(await keepMine(store, { keepMineAsRevision, saveRevision: vi.fn() })).toBe(true);
-    expect(keepMineAsRevision).toHaveBeenCalledWith(expect.objectContaining({ draftId: "draft-1", baseRevisionNumber: 8, message: "mine" }));
+    expect(keepMineAsRevision).toHaveBeenCalledWith(
+      expect.objectContaining({ draftId: "draft-1", baseRevisionNumber: 8, message: "mine" }),
+    );
     expect(store.getState().base.number).toBe(9);
     expect(store.getState().save.conflict).toBeNull();
     expect(isDirty(store.getState())).toBe(false);
@@ -83,11 +98,16 @@ describe("two people, one draft", () => {
   it("takes what was edited since the refusal along when mine is kept", async () => {
     const { store } = await conflicted();
     store.getState().change(SHUNT, 0.03);
-    const saveRevision = vi.fn<ScenarioActions["saveRevision"]>().mockResolvedValue(success({ number: 9, revisionId: "r9" }));
+    const saveRevision = vi
+      .fn<ScenarioActions["saveRevision"]>()
+      .mockResolvedValue(success({ number: 9, revisionId: "r9" }));
     const keepMineAsRevision = vi.fn<ScenarioActions["keepMineAsRevision"]>();
     await keepMine(store, { keepMineAsRevision, saveRevision });
     expect(keepMineAsRevision).not.toHaveBeenCalled();
-    expect(saveRevision.mock.calls[0]?.[0]).toMatchObject({ baseRevisionNumber: 8, document: { sensing: { shunt: { resistanceOhm: 0.03 } } } });
+    expect(saveRevision.mock.calls[0]?.[0]).toMatchObject({
+      baseRevisionNumber: 8,
+      document: { sensing: { shunt: { resistanceOhm: 0.03 } } },
+    });
   });
 
   it("takes theirs as one step that undo takes back", async () => {
