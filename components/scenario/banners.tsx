@@ -83,11 +83,8 @@ function ConflictBanner({ onOpen }: { onOpen: (dialog: Opened) => void }) {
 function RoleBanner({ mayDuplicate, isArchived }: Omit<Props, "onOpen">) {
   const duplicate = useDuplicate();
   const mode = useScenario((state) => state.mode);
-  const hasId = useScenario((state) => state.scenarioId !== null);
-  if (mode === "edit") return null;
-  if (mode === "guest" || !hasId) {
-    return <p className={styles.banner}>Change any value and see what follows. Nothing that you change is kept.</p>;
-  }
+  // a guest is told by the page that the link opens, the front page keeps quiet
+  if (mode !== "read") return null;
   return (
     <p className={styles.banner}>
       <span>

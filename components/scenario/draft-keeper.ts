@@ -82,14 +82,12 @@ export function keepDraft(
       const state = store.getState();
       // whoever was quicker than the storage keeps what they typed
       if (kept && !isDirty(state) && isDirty(kept)) {
-        store
-          .getState()
-          .restoreDraft({
-            base: kept.base.number === state.base.number ? state.base : kept.base,
-            document: kept.document,
-            keptAtMs: kept.keptAtMs,
-            baseNumber: kept.base.number,
-          });
+        store.getState().restoreDraft({
+          base: kept.base.number === state.base.number ? state.base : kept.base,
+          document: kept.document,
+          keptAtMs: kept.keptAtMs,
+          baseNumber: kept.base.number,
+        });
       }
     })
     .catch(onProblem)

@@ -4,6 +4,7 @@ import { DropdownMenu } from "radix-ui";
 import { copyFigures, exportCsv, exportDocument, exportPng, exportSvg } from "./exports";
 import { useScenario, useWorkbench } from "./provider";
 import { useDuplicate } from "./use-duplicate";
+import { useLayout } from "./use-layout";
 import { useThemeName } from "./use-theme-name";
 import type { Opened } from "./workbench-dialogs";
 import styles from "./controls.module.css";
@@ -17,6 +18,8 @@ export function MoreMenu({ onOpen, mayDuplicate }: Props) {
   const mode = useScenario((state) => state.mode);
   const hasRun = useScenario((state) => state.shown !== null);
   const duplicate = useDuplicate();
+  const redo = useScenario((state) => state.history.future.at(-1)?.label);
+  const isPhone = useLayout() === "phone";
   const png = () =>
     void exportPng(store, theme).catch(() =>
       store.getState().say("This browser could not make the picture; take the SVG instead"),
@@ -34,6 +37,7 @@ export function MoreMenu({ onOpen, mayDuplicate }: Props) {
       </DropdownMenu.Trigger>
       <DropdownMenu.Portal>
         <DropdownMenu.Content className={styles.menu} align="end" sideOffset={4} collisionPadding={8}>
+          {isPhone && redo !== undefined && <Item onSelect={() => store.getState().redo()} words={`Redo: ${redo}`} />}
           <Item disabled={!hasRun} onSelect={() => void copyFigures(store)} words="Copy figures as text" />
           <Item disabled={!hasRun} onSelect={() => exportCsv(store)} words="CSV of the visible window" />
           <Item disabled={!hasRun} onSelect={() => exportSvg(store, theme)} words="Plots as SVG" />

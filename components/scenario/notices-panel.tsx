@@ -1,13 +1,13 @@
 "use client";
 
 import type { ReactNode } from "react";
-import { CautionSign, FaultSign, NoteSign } from "@/components/ui/signs";
 import type { Notice, Severity } from "@/lib/engine/results";
 import { inputAt } from "@/lib/scenario/inputs";
 import { labelOf } from "@/lib/scenario/diff";
 import { nameOf } from "@/lib/scenario/names";
 import { formatQuantity } from "@/lib/units/format";
 import { useScenario, useWorkbench } from "./provider";
+import { SeverityGlyph } from "./severity-glyph";
 import styles from "./notices.module.css";
 
 const RANK: Record<Severity, number> = { fault: 0, caution: 1, note: 2 };
@@ -18,6 +18,7 @@ export function NoticesPanel({ onGo }: { onGo?: (where: "run" | "inputs") => voi
   const findings = useScenario((state) => state.findings);
   const notices = useScenario((state) => state.shown?.simulation.notices ?? NONE);
   const run = useScenario((state) => state.run);
+  const hasRun = useScenario((state) => state.shown !== null);
   const document = useScenario((state) => state.document);
   const goToField = (path: string) => {
     onGo?.("inputs");
@@ -68,7 +69,7 @@ export function NoticesPanel({ onGo }: { onGo?: (where: "run" | "inputs") => voi
             <Links notice={notice} onTime={goToTime} onField={goToField} />
           </Item>
         ))}
-        {sorted.length === 0 && findings.length === 0 && run.phase !== "failed" && (
+        {hasRun && sorted.length === 0 && findings.length === 0 && run.phase !== "failed" && (
           <li className={styles.none}>Nothing to say about this run.</li>
         )}
       </ul>
@@ -135,19 +136,5 @@ function Item({ severity, title, children }: { severity: Severity; title: string
         {children}
       </div>
     </li>
-  );
-}
-
-const SIGNS = { fault: FaultSign, caution: CautionSign, note: NoteSign };
-const SEVERITY_WORDS = { fault: "Fault", caution: "Caution", note: "Note" };
-
-/** Octagon, triangle, ring: shape first, hue second; the word for who does not see it. */
-export function SeverityGlyph({ severity }: { severity: Severity }) {
-  const Sign = SIGNS[severity];
-  return (
-    <span className={styles.glyph}>
-      <Sign />
-      <span className="visually-hidden">{SEVERITY_WORDS[severity]}: </span>
-    </span>
   );
 }

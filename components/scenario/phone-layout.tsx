@@ -3,9 +3,10 @@
 import { useState } from "react";
 import { FiguresPanel } from "./figures-panel";
 import { InputsPanel } from "./inputs-panel";
-import { NoticesPanel, SeverityGlyph } from "./notices-panel";
+import { NoticesPanel } from "./notices-panel";
 import { useScenario } from "./provider";
 import { BridgeNow, Lanes, NoRunYet, Overview, Steps, StripNow } from "./run-region";
+import { SeverityGlyph } from "./severity-glyph";
 import styles from "./phone.module.css";
 
 const TABS = ["run", "inputs", "figures", "notices"] as const;

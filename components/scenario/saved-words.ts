@@ -24,6 +24,8 @@ type SavedFacts = {
 export function savedWords({ number, savedAtMs, changeCount, isOffline, mode, nowMs }: SavedFacts): string {
   const moment = formatMoment(savedAtMs, nowMs);
   const changes = changeCount === 1 ? "1 change" : `${changeCount} changes`;
+  // a link names its revision, not its hour
+  if (changeCount === 0 && mode === "guest") return `rev ${number}`;
   if (changeCount === 0) return `rev ${number} · saved ${moment}`;
   if (mode === "guest") return `rev ${number} · ${changes}, nothing is kept`;
   if (mode === "read") return `rev ${number} · ${changes}, kept here only`;

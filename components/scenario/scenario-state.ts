@@ -1,3 +1,4 @@
+import type { ScenarioView } from "@/db/queries/scenarios";
 import type { Figures, InstantReading, Simulation, View } from "@/lib/engine/results";
 import type { ErrorCode } from "@/lib/errors";
 import type { Finding } from "@/lib/result";
@@ -18,8 +19,9 @@ export type InitialScenario = {
   mode: WorkbenchMode;
   title: string;
   tags: string[];
+  /** State of the revision; left out where there are none to speak of (a guest, the front page). */
+  revisionState?: ScenarioView["state"] | null;
   base: BaseRevision;
-  isApproved?: boolean;
 };
 
 export type TimeWindow = { fromS: number; toS: number };
@@ -79,6 +81,7 @@ export type ScenarioState = {
   mode: WorkbenchMode;
   title: string;
   tags: string[];
+  revisionState: ScenarioView["state"] | null;
 
   base: BaseRevision;
   /** The newest revision this page knows of; an older draft may be based on an earlier one. */

@@ -1,7 +1,6 @@
 "use client";
 
 import { useRef, useState, type ReactNode } from "react";
-import type { ScenarioView } from "@/db/queries/scenarios";
 import { createEngineClient } from "@/workers/engine-client";
 import type { EngineClient } from "@/workers/protocol";
 import { Banners } from "./banners";
@@ -22,8 +21,6 @@ import styles from "./workbench.module.css";
 
 export type ScenarioWorkbenchProps = {
   initial: InitialScenario;
-  /** State of the revision; `null` for a guest. */
-  state?: ScenarioView["state"] | null;
   actions?: Partial<ScenarioActions>;
   mayDuplicate?: boolean;
   isArchived?: boolean;
@@ -53,30 +50,26 @@ export function ScenarioWorkbench({
   );
 }
 
-type WorkbenchProps = Pick<ScenarioWorkbenchProps, "state" | "mayDuplicate" | "isArchived" | "share">;
+type WorkbenchProps = Pick<ScenarioWorkbenchProps, "mayDuplicate" | "isArchived" | "share">;
 
-function Workbench({ state = null, mayDuplicate = false, isArchived = false, share }: WorkbenchProps) {
+function Workbench({ mayDuplicate = false, isArchived = false, share }: WorkbenchProps) {
   const [opened, setOpened] = useState<Opened | null>(null);
   const root = useRef<HTMLDivElement>(null);
   const layout = useLayout();
   usePageKeys(root, opened, setOpened);
   return (
-    <div ref={root} className={styles.workbench} data-layout={layout}>
-      <WorkbenchHead
-        state={state}
-        onOpen={setOpened}
-        mayDuplicate={mayDuplicate}
-        share={share}
-        isPhone={layout === "phone"}
-      />
-      <ProgressBorder />
-      <div className={styles.banners}>
-        <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} isArchived={isArchived} />
+    <div className={styles.place}>
+      <div ref={root} className={styles.workbench} data-layout={layout}>
+        <WorkbenchHead onOpen={setOpened} mayDuplicate={mayDuplicate} share={share} isPhone={layout === "phone"} />
+        <ProgressBorder />
+        <div className={styles.banners}>
+          <Banners onOpen={setOpened} mayDuplicate={mayDuplicate} isArchived={isArchived} />
+        </div>
+        {layout === "phone" ? <PhoneLayout /> : <DeskLayout isNarrow={layout === "narrow"} />}
+        {layout !== "phone" && <WorkbenchFoot />}
+        <SaidLine />
+        <WorkbenchDialogs opened={opened} onClose={() => setOpened(null)} />
       </div>
-      {layout === "phone" ? <PhoneLayout /> : <DeskLayout isNarrow={layout === "narrow"} />}
-      {layout !== "phone" && <WorkbenchFoot />}
-      <SaidLine />
-      <WorkbenchDialogs opened={opened} onClose={() => setOpened(null)} />
     </div>
   );
 }

@@ -45,7 +45,8 @@ export function keepingActions(set: SetState, get: GetState): KeepingActions {
   return {
     saveStarted: () => setSave({ isSaving: true, problem: null }),
     saveDone: (saved) => {
-      set({ base: saved, newest: saved });
+      // whatever the one before was, a new revision starts as a draft
+      set({ base: saved, newest: saved, revisionState: "draft" });
       setSave({ isSaving: false, problem: null, conflict: null, restored: null, isOffline: false });
     },
     saveFailed: (problem) =>

@@ -13,17 +13,17 @@ export type GetState = ScenarioStore["getState"];
 
 /** The page's state: made once for each page that is opened, never at module level, so that no request sees another's. */
 export function createScenarioStore(initial: InitialScenario): ScenarioStore {
-  const { isApproved = false, ...identity } = initial;
   const document = initial.base.document;
   const parsed = parseScenario(document);
   return createStore<ScenarioStoreState>((set, get) => ({
-    ...identity,
+    ...initial,
+    revisionState: initial.revisionState ?? null,
     newest: initial.base,
     document,
     findings: parsed.ok ? [] : parsed.findings,
     goodDocument: document,
     refusedText: {},
-    isLocked: isApproved && initial.mode === "edit",
+    isLocked: initial.revisionState === "approved" && initial.mode === "edit",
     history: emptyHistory,
     gesture: null,
     dragStart: null,

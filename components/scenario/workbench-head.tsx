@@ -20,7 +20,6 @@ const STATE_WORDS: Record<State, string> = {
 };
 
 type Props = {
-  state: State | null;
   onOpen: (dialog: Opened) => void;
   share?: ReactNode;
   mayDuplicate: boolean;
@@ -28,9 +27,10 @@ type Props = {
 };
 
 /** Sub-head: title, state, what is saved and what is not, undo and redo, save. */
-export function WorkbenchHead({ state, onOpen, share, mayDuplicate, isPhone }: Props) {
+export function WorkbenchHead({ onOpen, share, mayDuplicate, isPhone }: Props) {
   const title = useScenario((one) => one.title);
   const mode = useScenario((one) => one.mode);
+  const state = useScenario((one) => one.revisionState);
   return (
     <header className={styles.subhead} data-region="head" tabIndex={-1} aria-label="Scenario">
       <h1 className={styles.title} title={title}>
@@ -51,7 +51,7 @@ export function WorkbenchHead({ state, onOpen, share, mayDuplicate, isPhone }: P
       </div>
       <span className={styles.grow} />
       <UndoButtons />
-      <span className={styles.wideOnly}>{share}</span>
+      {share}
       <MoreMenu onOpen={onOpen} mayDuplicate={mayDuplicate} />
       {mode === "edit" && <SaveButton onOpen={onOpen} />}
     </header>
@@ -111,7 +111,7 @@ function UndoButtons() {
       </button>
       <button
         type="button"
-        className="button"
+        className={`button ${styles.redo}`}
         data-kind="quiet"
         disabled={redo === undefined}
         aria-label={redoText}

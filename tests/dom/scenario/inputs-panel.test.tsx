@@ -128,7 +128,7 @@ describe("the inputs panel", () => {
   });
 
   it("shows an approved revision as text until a new draft is started", () => {
-    const { store } = renderScenario(<InputsPanel />, { initial: { isApproved: true } });
+    const { store } = renderScenario(<InputsPanel />, { initial: { revisionState: "approved" } });
     expect(screen.queryByRole("textbox")).toBeNull();
     expect(screen.getByLabelText(/^Shunt value/)).toHaveTextContent("13.1 mΩ");
     act(() => store.getState().unlock());

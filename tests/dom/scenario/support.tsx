@@ -51,6 +51,7 @@ export const initialOf = (document: ScenarioDocument, change: Partial<InitialSce
   mode: "edit",
   title: document.title,
   tags: ["gate"],
+  revisionState: "draft",
   base: { number: 7, document, savedAtMs: Date.UTC(2026, 4, 4, 14, 2), authorName: "Ama Lindqvist" },
   ...change,
 });

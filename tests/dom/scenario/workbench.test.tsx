@@ -14,7 +14,6 @@ function openPage(props: Partial<ScenarioWorkbenchProps> = {}, actions: Partial<
   render(
     <WithRouter>
       <ScenarioWorkbench
-        state="draft"
         initial={initialOf(document_)}
         createClient={directClient}
         storage={storage}
@@ -174,16 +173,14 @@ describe("the scenario page", () => {
   it("keeps nothing of a guest and says so", async () => {
     const { user, storage } = openPage({
       initial: initialOf(document_, { mode: "guest", scenarioId: null, personId: null }),
-      state: null,
     });
     await setShunt(user, "22");
-    expect(screen.getByText(/Nothing that you change is kept/)).toBeInTheDocument();
     expect(screen.getByText("rev 7 · 1 change, nothing is kept")).toBeInTheDocument();
     expect((storage as ReturnType<typeof memoryStorage>).kept.size).toBe(0);
   });
 
   it("starts a draft on an approved revision only when asked", async () => {
-    const { user } = openPage({ state: "approved", initial: initialOf(document_, { isApproved: true }) });
+    const { user } = openPage({ initial: initialOf(document_, { revisionState: "approved" }) });
     expect(screen.queryByRole("textbox", { name: /^Shunt value/ })).toBeNull();
     await user.click(screen.getByRole("button", { name: "Start rev 8" }));
     expect(shunt()).toBeInTheDocument();

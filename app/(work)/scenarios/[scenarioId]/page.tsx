@@ -40,7 +40,6 @@ export default async function ScenarioPage(props: Props) {
     <ScenarioWorkbench
       // another scenario, or a revision saved elsewhere and loaded anew, starts with a store of its own
       key={scenario.id}
-      state={scenario.state}
       mayDuplicate={scenario.mayDuplicate}
       isArchived={scenario.isArchived}
       actions={actions}
@@ -51,7 +50,7 @@ export default async function ScenarioPage(props: Props) {
         mode: scenario.mayEdit ? "edit" : "read",
         title: scenario.title,
         tags: scenario.tags,
-        isApproved: scenario.state === "approved",
+        revisionState: scenario.state,
         base: {
           number: revision.number,
           document: revision.document,
