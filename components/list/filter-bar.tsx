@@ -28,7 +28,7 @@ export function FilterBar({ list, filter }: { list: ScenarioList; filter: Scenar
         </label>
         <input id="scenario-search" key={filter.search ?? ""} name="q" type="search" className="text-input h-[30px]!" placeholder="Name or tag, then Enter" defaultValue={filter.search ?? ""} />
       </form>
-      <nav aria-label="State" className="button-group">
+      <nav aria-label="State" className="button-group max-[719px]:w-full max-[719px]:overflow-x-auto">
         <StateLink filter={filter} change={{ state: undefined, archived: false }} isOn={!filter.state && !filter.archived} label={`All ${counts.all}`} />
         {SHOWN_STATES.map((state) => (
           <StateLink key={state} filter={filter} change={{ state, archived: false }} isOn={filter.state === state} label={`${STATE_WORDS[state]} ${counts[state]}`} />

@@ -43,7 +43,11 @@ export function Row({ row, scaleA, errorScaleA, isCurrent, onPoint, onDuplicate,
           </span>
         )}
       </td>
-      <td className={`num ${CELL}`}>{summary ? figure(summary.motorRmsA) : "–"}</td>
+      <td className={`num ${CELL}`}>
+        <span className="text-ink3 min-[720px]:hidden">RMS </span>
+        {summary ? figure(summary.motorRmsA) : "–"}
+        <span className="text-ink3 min-[720px]:hidden"> A</span>
+      </td>
       <td className="num max-[1199px]:hidden">{summary ? figure(summary.motorRippleA, 2) : "–"}</td>
       <td className="num max-[999px]:hidden">{!summary ? "–" : summary.clippedShare > 0 ? <b className="text-fault">clips</b> : summary.headroomV === null ? "–" : figure(summary.headroomV, 2)}</td>
       <td className={`num ${CELL}`}>
@@ -54,7 +58,9 @@ export function Row({ row, scaleA, errorScaleA, isCurrent, onPoint, onDuplicate,
             <span className="max-[1199px]:hidden">
               <ErrorBar errorA={error} scaleA={errorScaleA} />
             </span>
-            <span className={error > errorScaleA ? "font-bold text-fault" : ""}>±{figure(error, 2)}</span>
+            <span className={error > errorScaleA ? "font-bold text-fault" : ""}>
+              <span className="font-normal text-ink3 min-[720px]:hidden">error </span>±{figure(error, 2)}
+            </span>
           </span>
         )}
       </td>

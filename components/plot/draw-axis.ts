@@ -54,12 +54,16 @@ export function drawTimeAxis(painter: Painter, scene: Scene): void {
   const { layout, scale } = scene;
   const plotPx = layout.x1 - layout.x0;
   const format = timeFormat(scene.window, plotPx);
-  const ticks = niceTicks(scale.fromS / format.factor, scale.toS / format.factor, Math.max(2, Math.floor(plotPx / (layout.isCompact ? 90 : 105))));
-  const step = (ticks[1] ?? 1) - (ticks[0] ?? 0);
+  const from = scale.fromS / format.factor;
+  const to = scale.toS / format.factor;
+  const tickCount = Math.max(2, Math.floor(plotPx / (layout.isCompact ? 90 : 105)));
+  const ticks = niceTicks(from, to, tickCount);
+  // of the span, not of two neighbours: a narrow plot may hold a single tick
+  const step = roundStep(to - from, tickCount);
   const y = layout.axisY;
   const minorStep = step / 5;
   const marks: number[] = [];
-  for (let index = Math.ceil(scale.fromS / format.factor / minorStep - 1e-9); index * minorStep <= scale.toS / format.factor + minorStep * 1e-9; index += 1) {
+  for (let index = Math.ceil(from / minorStep - 1e-9); index * minorStep <= to + minorStep * 1e-9; index += 1) {
     const x = crisp(xOf(scale, index * minorStep * format.factor));
     marks.push(x, y, x, y + 3, NaN, NaN);
   }

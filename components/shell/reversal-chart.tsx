@@ -1,101 +1,92 @@
 import { scaleLinear } from "d3-scale";
-import { area, line } from "d3-shape";
 import type { ReversalChartData } from "@/lib/explain/reversal-chart";
-import { levelAlongColumns, unbroken } from "./contours";
+import { BOX } from "./chart-box";
+import { levelLines, ringsAbove, thinned, valueAt, type Field, type Point } from "./contours";
+import { ChartFrame } from "./reversal-chart-frame";
+import { ChartWords, isNearWord, placeWords } from "./reversal-chart-words";
 
-const WIDTH = 920;
-const HEIGHT = 880;
-const EDGE = { left: 46, right: 12, top: 12, bottom: 36 };
-const STEP_A = 1;
+const STEP_A = 0.5;
+/** Distance of the figures strewn over the chart, and how far each stands from its place in the grid. */
+const FIGURES = { dx: 76, dy: 62, jitter: 15 } as const;
+const THIN_PX = 0.35;
+
+const SCALES = {
+  x: (columnCount: number) => scaleLinear([0, columnCount - 1], [BOX.left, BOX.width - BOX.right]),
+  y: (rowCount: number) => scaleLinear([0, rowCount - 1], [BOX.height - BOX.bottom, BOX.top]),
+};
+type Level = { level: number; area: string; line: string };
+
+// the data never changes while the server runs, and tracing its lines takes longer than sending them
+const traced = new WeakMap<ReversalChartData, Level[]>();
+
+function levelsOf(chart: ReversalChartData): Level[] {
+  const known = traced.get(chart);
+  if (known) return known;
+  const { timeS, duty, currentA } = chart;
+  const [x, y] = [SCALES.x(timeS.length), SCALES.y(duty.length)];
+  const toPage = ([column, row]: Point): Point => [x(column), y(row)];
+  const all = currentA.flat();
+  const from = Math.ceil(Math.min(...all) / STEP_A);
+  const to = Math.floor(Math.max(...all) / STEP_A);
+  const levels = Array.from({ length: to - from + 1 }, (_, n) => (from + n) * STEP_A).map((level) => {
+    // below slack it is the far side that is filled
+    const rings = level < 0 ? ringsAbove(negated(currentA), -level) : ringsAbove(currentA, level);
+    const area = isWhole(level) && level !== 0 ? pathOf(rings.map((ring) => ring.points.map(toPage)), "Z") : "";
+    return { level, area, line: pathOf(levelLines(rings).map((part) => part.map(toPage)), "") };
+  });
+  traced.set(chart, levels);
+  return levels;
+}
+
+const isWhole = (level: number) => Number.isInteger(level);
+const negated = (field: Field): Field => field.map((row) => row.map((value) => -value));
+const pathOf = (parts: Point[][], end: "Z" | "") =>
+  parts.map((part) => `M${thinned(part, THIN_PX).map(([px, py]) => `${px.toFixed(1)} ${py.toFixed(1)}`).join("L")}${end}`).join("");
 
 /** The chart beside the sign-in form: data, drawn as a chart of depths, forward above slack and reverse below it. */
 export function ReversalChart({ chart }: { chart: ReversalChartData }) {
-  const { timeS, duty, currentA, commandS } = chart;
-  const x = scaleLinear().domain([0, timeS[timeS.length - 1]!]).range([EDGE.left, WIDTH - EDGE.right]);
-  const y = scaleLinear().domain([0, duty.length - 1]).range([HEIGHT - EDGE.bottom, EDGE.top]);
-  const dutyY = scaleLinear().domain([duty[0]!, duty[duty.length - 1]!]).range(y.range());
-  const flat = currentA.flat();
-  const top = Math.ceil(Math.max(...flat) / STEP_A);
-  const bottom = Math.floor(Math.min(...flat) / STEP_A);
-  const levels = Array.from({ length: top - bottom + 1 }, (_, n) => (bottom + n) * STEP_A);
-  const lines = levels.map((level) => ({ level, parts: unbroken(levelAlongColumns(currentA, level)) }));
-  const path = line<{ column: number; row: number }>((p) => x(timeS[p.column]!), (p) => y(p.row));
-  const rows = duty.length - 1;
-  const shade = (level: number) =>
-    area<number>((c) => x(timeS[c]!))
-      .y0((c) => y(levelRow(currentA, c, level, rows)))
-      .y1(y(level >= 0 ? rows : 0))(timeS.map((_, c) => c));
+  const [x, y] = [SCALES.x(chart.timeS.length), SCALES.y(chart.duty.length)];
+  const levels = levelsOf(chart);
+  const placed = placeWords(chart, x, y);
   return (
-    <svg viewBox={`0 0 ${WIDTH} ${HEIGHT}`} className="h-full max-h-[calc(100dvh-24px)] w-full" preserveAspectRatio="xMidYMid meet" role="img" aria-label="Motor current after a change of command, by time and by duty: forward above the line of zero current, reverse below it">
-      {levels.filter((level) => level !== 0).map((level) => (
-        <path key={`fill ${level}`} d={shade(level) ?? undefined} fill={level > 0 ? "var(--fwd-fill)" : "var(--rev-fill)"} opacity={0.16} />
+    <svg viewBox={`0 0 ${BOX.width} ${BOX.height}`} className="block size-full max-h-dvh" role="img" aria-label="Motor current after a change of command, by time and by duty: forward above the line of zero current, reverse below it">
+      {levels.map(({ level, area }) => area && <path key={level} d={area} fillRule="evenodd" fill={level > 0 ? "var(--fwd-fill)" : "var(--rev-fill)"} opacity={level > 0 ? 0.2 : 0.13} />)}
+      {levels.map(({ level, line }) => (
+        <path key={level} d={line} fill="none" strokeLinejoin="round" {...strokeOf(level)} />
       ))}
-      {lines.map(({ level, parts }) =>
-        parts.map((part, n) => (
-          <path key={`${level} ${n}`} d={path(part) ?? undefined} fill="none" stroke={level === 0 ? "var(--ink)" : level > 0 ? "var(--fwd)" : "var(--rev)"} strokeWidth={level === 0 ? 2.4 : 1} strokeDasharray={level % 2 === 0 ? undefined : "5 4"} />
-        )),
-      )}
-      {lines.map(({ level, parts }) => {
-        const part = parts[parts.length - 1];
-        if (!part || part.length < 12 || level === 0) return null;
-        const at = part[Math.floor(part.length * (level % 2 === 0 ? 0.72 : 0.5))]!;
-        return (
-          <text key={`figure ${level}`} x={x(timeS[at.column]!)} y={y(at.row) + 5} textAnchor="middle" style={{ font: "italic 16px var(--serif)" }} fill="var(--ink)" stroke="var(--paper)" strokeWidth={4} paintOrder="stroke">
-            {Math.abs(level)}
-          </text>
-        );
-      })}
-      <line x1={x(commandS)} x2={x(commandS)} y1={EDGE.top} y2={HEIGHT - EDGE.bottom} stroke="var(--ink)" strokeDasharray="6 5" />
-      <text x={x(commandS) - 6} y={EDGE.top + 22} textAnchor="end" fontSize={12} fill="var(--ink2)">command</text>
-      <text x={x(4.4e-4)} y={dutyY(0.4)} style={{ font: "italic 34px var(--serif)", letterSpacing: "0.3em" }} fill="var(--fwd)" textAnchor="middle">Forward</text>
-      <text x={x(4.6e-4)} y={dutyY(-0.62)} style={{ font: "italic 34px var(--serif)", letterSpacing: "0.3em" }} fill="var(--rev)" textAnchor="middle">Reverse</text>
-      <Frame x={x} dutyY={dutyY} />
-      <Title note={chart.note} />
+      <Figures field={chart.currentA} x={x} y={y} isTaken={(px, py) => isNearWord(placed.words, px, py)} />
+      <ChartWords {...placed} />
+      <ChartFrame chart={chart} />
     </svg>
   );
 }
 
-/** Row of a level in a column, clamped to the field. */
-function levelRow(field: readonly (readonly number[])[], column: number, level: number, rows: number): number {
-  const only = levelAlongColumns(field.map((row) => [row[column]!]), level)[0];
-  if (only !== null && only !== undefined) return only;
-  return field[0]![column]! > level ? 0 : rows;
+function strokeOf(level: number) {
+  if (level === 0) return { stroke: "var(--ink)", strokeWidth: 2.4 };
+  const stroke = level > 0 ? "var(--fwd)" : "var(--rev)";
+  return isWhole(level) ? { stroke, strokeWidth: 1 } : { stroke, strokeWidth: 0.8, strokeDasharray: "5 3", opacity: 0.45 };
 }
 
-type Scale = (value: number) => number;
+type Scale = { (value: number): number; invert: (value: number) => number };
 
-/** Axes and the graduated border. */
-function Frame({ x, dutyY }: { x: Scale; dutyY: Scale }) {
-  const right = WIDTH - EDGE.right;
-  const foot = HEIGHT - EDGE.bottom;
-  return (
-    <g fill="var(--ink3)" fontSize={12}>
-      <rect x={EDGE.left} y={EDGE.top} width={right - EDGE.left} height={foot - EDGE.top} fill="none" stroke="var(--ink)" />
-      {Array.from({ length: 6 }, (_, n) => n * 1e-4).map((t, n) => (
-        <g key={t}>
-          <rect x={x(t)} y={foot} width={x(1e-4) - x(0)} height={6} fill={n % 2 === 0 ? "var(--ink)" : "none"} stroke="var(--ink)" />
-          <text x={x(t)} y={foot + 22} textAnchor="middle">{Math.round(t * 1e6)}</text>
-        </g>
-      ))}
-      <text x={right} y={foot + 22} textAnchor="end">600 µs</text>
-      {[-0.8, -0.6, -0.4, -0.2, 0, 0.2, 0.4, 0.6].map((u) => (
-        <text key={u} x={EDGE.left - 7} y={dutyY(u) + 4} textAnchor="end">{u === 0 ? "0" : `${u > 0 ? "+" : "−"}${Math.round(Math.abs(u) * 100)}`}</text>
-      ))}
-      <text x={EDGE.left - 7} y={EDGE.top + 8} textAnchor="end">duty %</text>
-    </g>
-  );
-}
-
-function Title({ note }: { note: string }) {
-  return (
-    <g transform={`translate(${EDGE.left + 26} ${HEIGHT - EDGE.bottom - 152})`}>
-      <rect width={312} height={126} fill="var(--paper)" stroke="var(--ink)" />
-      <rect x={4} y={4} width={304} height={118} fill="none" stroke="var(--ink)" strokeWidth={0.7} />
-      <text x={156} y={28} textAnchor="middle" fontSize={10.5} letterSpacing="0.09em" fontWeight={600} fill="var(--ink2)">MOTOR CURRENT</text>
-      <text x={156} y={56} textAnchor="middle" style={{ font: "400 23px var(--serif)" }} fill="var(--ink)">A motor under a new command</text>
-      <text x={156} y={78} textAnchor="middle" fontSize={12} fill="var(--ink2)">by time and by the duty commanded at 100 µs</text>
-      <line x1={24} x2={288} y1={88} y2={88} stroke="var(--edge)" />
-      <text x={156} y={108} textAnchor="middle" fontSize={12} fill="var(--ink2)">{note} · lines every 1 A, heavy: zero</text>
-    </g>
-  );
+/** Figures as on a chart of depths: whole ampere, tenths below the line. Strewn evenly, the same on every page. */
+function Figures({ field, x, y, isTaken }: { field: Field; x: Scale; y: Scale; isTaken: (px: number, py: number) => boolean }) {
+  const figures: { px: number; py: number; tenths: number }[] = [];
+  for (let row = 0; BOX.top + 26 + row * FIGURES.dy < BOX.height - BOX.bottom - 12; row += 1)
+    for (let column = 0; column < 12; column += 1) {
+      const turn = Math.sin(row * 12.9898 + column * 78.233) * 43758.5453;
+      const shift = 2 * (turn - Math.floor(turn)) - 1;
+      const px = BOX.left + 30 + column * FIGURES.dx + (row % 2) * 0.5 * FIGURES.dx + shift * FIGURES.jitter;
+      const py = BOX.top + 26 + row * FIGURES.dy + shift * FIGURES.jitter * (column % 2 === 0 ? 1 : -1);
+      if (px > BOX.width - BOX.right - 18 || isTaken(px, py)) continue;
+      figures.push({ px, py, tenths: Math.round(Math.abs(valueAt(field, x.invert(px), y.invert(py))) * 10) });
+    }
+  return figures.map(({ px, py, tenths }) => (
+    <text key={`${px} ${py}`} x={px.toFixed(1)} y={(py + 4).toFixed(1)} textAnchor="middle" className="chart-figure">
+      {Math.floor(tenths / 10)}
+      <tspan dy={4} fontSize={11}>
+        {tenths % 10}
+      </tspan>
+    </text>
+  ));
 }

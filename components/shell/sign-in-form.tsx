@@ -6,11 +6,12 @@ import { useState, useSyncExternalStore } from "react";
 import { Button } from "@/components/ui/button";
 import { Mark } from "@/components/ui/signs";
 import { TextField } from "@/components/ui/text-field";
+import { ROLE_WORDS, type Role } from "@/lib/access/table";
 import { errorText } from "@/lib/errors";
 import type { Result } from "@/lib/result";
 import { ThemeSwitch } from "./theme-switch";
 
-type DemoAccount = { email: string; role: string; name: string };
+type DemoAccount = { email: string; role: Role; name: string };
 type Props = {
   signIn: (input: { email: string; password: string; from?: string }) => Promise<Result<{ returnPath: string }>>;
   from?: string;
@@ -70,8 +71,10 @@ export function SignInForm({ signIn, from, demo }: Props) {
           <TextField id="email" label="E-mail" type="email" autoComplete="username" value={email} onChange={(event) => setEmail(event.target.value)} problem={problems.email} />
           <div className="relative">
             <TextField id="password" label="Password" type={isShown ? "text" : "password"} autoComplete="current-password" value={password} onChange={(event) => setPassword(event.target.value)} problem={problems.password} />
-            <Button kind="quiet" className="absolute! top-[-5px] right-0" aria-pressed={undefined} onClick={() => setShown(!isShown)}>
-              {isShown ? "Hide password" : "Show password"}
+            {/* inside the field, under its label */}
+            <Button kind="quiet" className="absolute! top-[26px] right-[3px] text-ink2! max-[719px]:top-[25px]" onClick={() => setShown(!isShown)}>
+              {isShown ? "Hide" : "Show"}
+              <span className="visually-hidden"> password</span>
             </Button>
           </div>
           {problems.form && (
@@ -92,19 +95,19 @@ export function SignInForm({ signIn, from, demo }: Props) {
             <p className="flex justify-between">
               <span className="caps">Demo accounts</span> <span className="text-ink3">this machine only</span>
             </p>
-            <div className="mt-3 grid grid-cols-3 gap-[6px]">
+            <div className="mt-3 grid grid-cols-3 gap-[6px] max-[359px]:grid-cols-2">
               {demo.accounts.map((account) => (
                 <Button
                   key={account.email}
                   className="justify-center"
-                  title={`${account.name}, ${account.role}`}
+                  title={account.name}
                   onClick={() => {
                     setEmail(account.email);
                     setPassword(demo.password);
                     setProblems({});
                   }}
                 >
-                  {account.email.startsWith("second-") ? "designer 2" : account.role}
+                  {account.email.startsWith("second-") ? "Designer 2" : ROLE_WORDS[account.role].name}
                 </Button>
               ))}
             </div>

@@ -6,8 +6,8 @@ type Props = InputHTMLAttributes<HTMLInputElement> & { label: ReactNode; hint?: 
 export function TextField({ label, hint, problem, id, ...input }: Props) {
   const noteId = `${id}-note`;
   return (
-    <label className="text-field" htmlFor={id}>
-      <span>{label}</span>
+    <div className="text-field">
+      <label htmlFor={id}>{label}</label>
       <input {...input} id={id} className="text-input" aria-invalid={problem ? true : undefined} aria-describedby={problem || hint ? noteId : undefined} />
       {problem ? (
         <span className="problem" id={noteId} role="alert">
@@ -18,6 +18,6 @@ export function TextField({ label, hint, problem, id, ...input }: Props) {
           {hint}
         </span>
       ) : null}
-    </label>
+    </div>
   );
 }

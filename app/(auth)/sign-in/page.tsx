@@ -21,8 +21,8 @@ export default async function SignInPage({ searchParams }: Props) {
       ? { password: DEMO_PASSWORD, accounts: DEMO_ACCOUNTS.filter((one) => one.workspace === "home").map(({ email, role, name }) => ({ email, role, name })) }
       : null;
   return (
-    <div className="grid min-h-dvh grid-cols-[1fr_minmax(380px,33%)] max-[1099px]:grid-cols-1">
-      <div className="border-r border-ink p-3 max-[1099px]:hidden">
+    <div className="grid min-h-dvh grid-cols-[1fr_470px] max-[1099px]:grid-cols-1">
+      <div className="border-r border-ink max-[1099px]:hidden">
         <ReversalChart chart={reversalChart()} />
       </div>
       <main id="main" className="flex flex-col bg-sheet px-16 py-10 max-[1099px]:px-6">

@@ -80,7 +80,7 @@ function fillRails(mode: AffineMode, p: StageParameters, portA: LegPort, portB: 
   const kappa = portA.a - portB.a;
   const shuntOhm = p.supplyShuntOhm + p.returnShuntOhm;
   // D = (v_bus - shunt kappa i) / (1 + shunt g), the source resistance counting as a shunt when the bus is algebraic
-  const seriesOhm = p.hasBusState ? shuntOhm : shuntOhm + (p.busF > 0 ? 0 : p.sourceOhm);
+  const seriesOhm = p.hasBusState ? shuntOhm : shuntOhm + p.sourceOhm; // a stiff bus has no source resistance
   const scale = 1 / (1 + seriesOhm * g);
   const dI = -seriesOhm * kappa * scale;
   const dV = p.hasBusState ? scale : 0;
@@ -89,8 +89,7 @@ function fillRails(mode: AffineMode, p: StageParameters, portA: LegPort, portB: 
   rows.set([(g * dI + kappa) * cI, 0, g * dV, g * d0], ROW_BRIDGE);
   if (p.hasBusState) rows.set([0, 0, 1, 0], ROW_BUS);
   else {
-    const dropOhm = p.busF > 0 ? 0 : p.sourceOhm;
-    for (let j = 0; j < 4; j++) rows[ROW_BUS + j] = -dropOhm * rows[ROW_BRIDGE + j]!;
+    for (let j = 0; j < 4; j++) rows[ROW_BUS + j] = -p.sourceOhm * rows[ROW_BRIDGE + j]!;
     rows[ROW_BUS + 3]! += p.sourceV;
   }
   combine(rows, ROW_RAIL, ROW_BUS, 1, ROW_BRIDGE, -p.supplyShuntOhm);

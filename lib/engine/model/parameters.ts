@@ -170,6 +170,16 @@ function applyFault(p: Mutable<StageParameters>, site: string, fault: Fault, tim
   }
 }
 
+/**
+ * A bus behind R_s C of a few picoseconds follows the source at once as far as any bridge can tell; as a state it would
+ * only cost the other eigenvalues their digits. A blocking source always needs the state.
+ */
+const LEAST_BUS_TIME_S = 1e-11;
+
+function isBusState({ busCapacitanceF, resistanceOhm, acceptsReturn }: ScenarioDocument["supply"]): boolean {
+  return busCapacitanceF > 0 && resistanceOhm > 0 && (!acceptsReturn || busCapacitanceF * resistanceOhm > LEAST_BUS_TIME_S);
+}
+
 type LoadConstants = Pick<
   StageParameters,
   "isResistive" | "windingOhm" | "inductanceH" | "backEmfVPerRadPerS" | "torqueNmPerA" | "inertiaKgM2" | "viscousNmPerRadPerS" | "coulombNm" | "staticNm" | "isLocked"
@@ -213,7 +223,7 @@ export function stageParametersAt(document: ScenarioDocument, timeS: number, win
     sourceV: supply.voltageV,
     sourceOhm: supply.resistanceOhm,
     busF: supply.busCapacitanceF,
-    hasBusState: supply.busCapacitanceF > 0 && supply.resistanceOhm > 0,
+    hasBusState: isBusState(supply),
     acceptsReturn: supply.acceptsReturn,
     highOnOhm: bridge.highSide.onResistanceOhm,
     lowOnOhm: bridge.lowSide.onResistanceOhm,

@@ -27,8 +27,6 @@ const RISING_FRICTION_ERROR = 1e-8;
 const SOURCE_HYSTERESIS = 1e-12;
 const IDLE_S = 1e-15;
 const ARC_RAD = 1;
-/** Oscillations faster than this many arcs a period are not followed arc by arc: they are far above any real bridge. */
-const ARCS_MAX = 512;
 
 const RING = 12; // durations kept per mode: a PWM period has at most about ten different ones
 
@@ -188,7 +186,7 @@ export class PowerStage {
    */
   prepare(changedAtS: number, periodS: number): void {
     const p = this.parameters;
-    if (this.slot.spectrum.oscillationPerS > 0) this.limitToArc(periodS);
+    if (this.slot.spectrum.oscillationPerS > 0) this.limitToArc();
     if (p.coulombRateNmPerS === 0 && p.fanNmPerRadPerS2 === 0) return;
     const h = this.piece[PIECE_LENGTH]!;
     const sinceChangeS = this.piece[PIECE_START]! - changedAtS;
@@ -207,13 +205,13 @@ export class PowerStage {
       return;
     }
     if (p.fanNmPerRadPerS2 > 0 && this.shaftSign !== 0) {
-      const { a, b } = this.mode;
       const speed = this.x[1]!;
-      const accel = a[3]! * this.x[0]! + a[4]! * speed + b[1]!;
+      const accel = this.fanAcceleration(speed);
       // the tangent's torque error averages k dw^2/12: 4e-4 of the speed leaves 1.3e-8 of the torque
       const changeMax = 4e-4 * Math.max(Math.abs(speed), 1e-2);
       if (Math.abs(accel) * stretchS > changeMax) stretchS = Math.max(changeMax / Math.abs(accel), h / 256);
-      const middle = speed + 0.5 * accel * stretchS;
+      const halfChange = 0.5 * accel * stretchS;
+      const middle = speed + Math.sign(halfChange) * Math.min(Math.abs(halfChange), Math.max(Math.abs(speed), 1));
       if (Math.abs(middle - this.slot.tangentSpeedRadPerS) > 1e-6 * Math.abs(middle) + 1e-9) {
         this.slot.version = ++this.version;
         this.fill(this.slot, middle);
@@ -222,9 +220,17 @@ export class PowerStage {
     }
   }
 
+  /** dw/dt from the torques themselves, not from a tangent taken elsewhere. */
+  private fanAcceleration(speed: number): number {
+    const p = this.parameters;
+    const activeNm = p.activeOpposingNm * this.shaftSign > 0 ? p.activeOpposingNm : p.activeDrivingNm;
+    const frictionNm = this.shaftSign * (this.coulombNm + p.constantNm) + p.viscousNmPerRadPerS * speed + p.fanNmPerRadPerS2 * speed * Math.abs(speed);
+    return (p.torqueNmPerA * this.x[0]! - frictionNm - activeNm) / p.inertiaKgM2;
+  }
+
   /** Keeps the piece below a sixth of a turn of an oscillating mode, so that no guard passes zero twice between its ends. */
-  private limitToArc(periodS: number): void {
-    const arcS = Math.max(ARC_RAD / this.slot.spectrum.oscillationPerS, periodS / ARCS_MAX);
+  private limitToArc(): void {
+    const arcS = ARC_RAD / this.slot.spectrum.oscillationPerS;
     if (arcS < this.piece[PIECE_LENGTH]!) this.piece[PIECE_LENGTH] = arcS;
   }
 

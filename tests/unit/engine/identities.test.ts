@@ -114,7 +114,7 @@ describe("continuity", () => {
           if (!before || !after) throw new Error("no reading");
           // Nothing here drives more than a few hundred volts through the winding, or 100 A through the bus capacitor.
           expect(Math.abs(after.motorCurrentA - before.motorCurrentA)).toBeLessThan((400 / henry) * 2 * delta + 1e-9);
-          expect(Math.abs(after.speedRadPerS - before.speedRadPerS)).toBeLessThan(1e-3 * 1e-3 + 1e-9);
+          expect(Math.abs(after.speedRadPerS - before.speedRadPerS)).toBeLessThan(1.1e-6);
           if (isCapacitive) expect(Math.abs(after.busV - before.busV)).toBeLessThan((100 / supply.busCapacitanceF) * 2 * delta + 1e-6);
         }
       }),
