@@ -3,10 +3,19 @@ import type { ScenarioDocument } from "../scenario/schema";
 import { templateById } from "../scenario/templates";
 
 /** Motor current after a command, over time and over the duty commanded: rows are duties, ascending. */
-export type ReversalChartData = { commandS: number; timeS: number[]; duty: number[]; currentA: number[][]; note: string };
+export type ReversalChartData = {
+  commandS: number;
+  /** One segment of the border. */
+  periodS: number;
+  timeS: number[];
+  duty: number[];
+  currentA: number[][];
+  title: string;
+  note: string;
+};
 
-const TIMES = 73;
-const DUTIES = 40;
+const TIMES = 121;
+const DUTIES = 62;
 const RUN_S = 6e-4;
 const COMMAND_S = 1e-4;
 
@@ -17,7 +26,7 @@ export function reversalChart(): ReversalChartData {
   if (kept) return kept;
   const base = templateById("reversal")!.document;
   const timeS = Array.from({ length: TIMES }, (_, n) => (RUN_S * n) / (TIMES - 1));
-  const duty = Array.from({ length: DUTIES }, (_, n) => -0.9 + (1.5 * n) / (DUTIES - 1));
+  const duty = Array.from({ length: DUTIES }, (_, n) => -0.92 + (1.54 * n) / (DUTIES - 1));
   const before = base.command.points[0]!.duty;
   const startA = simulate(base, { at: [0] }).at[0]!;
   const currentA = duty.map((after) => {
@@ -31,6 +40,6 @@ export function reversalChart(): ReversalChartData {
   });
   const load = base.load.kind === "motor" ? base.load.motor : null;
   const note = load ? `${base.supply.voltageV} V · ${Math.round(load.inductanceH * 1e6)} µH · ${load.resistanceOhm} Ω · ${base.pwm.frequencyHz / 1000} kHz` : "";
-  kept = { commandS: COMMAND_S, timeS, duty, currentA, note };
+  kept = { commandS: COMMAND_S, periodS: 1 / base.pwm.frequencyHz, timeS, duty, currentA, title: `Reversal of a ${base.supply.voltageV} V drive`, note };
   return kept;
 }

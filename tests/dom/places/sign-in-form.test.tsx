@@ -7,7 +7,7 @@ import { router, WithRouter } from "../scenario/support";
 
 type Props = Parameters<typeof SignInForm>[0];
 const signIn = vi.fn<Props["signIn"]>();
-const demo = { password: "low and high", accounts: [{ email: "lead@weir.example.org", role: "lead", name: "Runa Tamsel" }] };
+const demo = { password: "low and high", accounts: [{ email: "lead@weir.example.org", role: "lead" as const, name: "Runa Tamsel" }] };
 const open = (change: Partial<Props> = {}) =>
   render(
     <WithRouter>
@@ -68,7 +68,7 @@ describe("the sign-in form", () => {
 
   it("fills in a demo account and signs nobody in by itself", async () => {
     open({ demo });
-    await userEvent.click(screen.getByRole("button", { name: "lead" }));
+    await userEvent.click(screen.getByRole("button", { name: "Lead" }));
     expect(email()).toHaveValue("lead@weir.example.org");
     expect(password()).toHaveValue("low and high");
     expect(signIn).not.toHaveBeenCalled();
