@@ -4,6 +4,7 @@ import { useRouter } from "next/navigation";
 import { useState } from "react";
 import { Button } from "@/components/ui/button";
 import { Dialog } from "@/components/ui/dialog";
+import { reach } from "@/components/scenario/saving";
 import { errorText } from "@/lib/errors";
 import type { Finding } from "@/lib/result";
 import { upgradeScenario } from "@/lib/scenario/upgrade";
@@ -29,7 +30,7 @@ export function ImportScenario({ createScenario, onClose }: { createScenario: Li
     const parsed = upgradeScenario(value);
     if (!parsed.ok) return setProblem({ text: `${parsed.findings.length === 1 ? "One value" : `${parsed.findings.length} values`} cannot be taken. Correct them here or in the file.`, findings: parsed.findings });
     setBusy(true);
-    const result = await createScenario({ document: parsed.document, title: parsed.document.title });
+    const result = await reach(() => createScenario({ document: parsed.document, title: parsed.document.title }));
     if (result.ok) return router.push(`/scenarios/${result.value.id}`);
     setBusy(false);
     setProblem({ text: errorText(result.code), findings: result.findings ?? [] });

@@ -1,132 +1,106 @@
 "use client";
 
-import Link from "next/link";
-import { useRouter } from "next/navigation";
 import { useState } from "react";
+import { useNow } from "@/components/scenario/use-now";
 import { Button } from "@/components/ui/button";
-import { Toast, type ToastContent } from "@/components/ui/toast";
+import { Toast } from "@/components/ui/toast";
 import type { ScenarioFilter, ScenarioList, ScenarioRow } from "@/db/queries/scenarios";
-import { errorText } from "@/lib/errors";
-import { filterHref } from "./filter";
+import { ROLE_WORDS, type Role } from "@/lib/access/table";
+import { MINUS } from "@/lib/units/format";
 import { FilterBar } from "./filter-bar";
 import { ImportScenario } from "./import-scenario";
-import { NewScenario, type TemplateChoice } from "./new-scenario";
 import type { ListActions } from "./list-actions";
+import { ListFoot } from "./list-foot";
+import { NewScenario, type TemplateChoice } from "./new-scenario";
+import { Nothing } from "./nothing";
 import { Row } from "./row";
+import type { SparkScale } from "./spark";
+import { useKeptSwitch } from "./use-kept-switch";
+import { useListDeeds } from "./use-list-deeds";
 import { useListKeys } from "./use-list-keys";
 
-type Props = { list: ScenarioList; filter: ScenarioFilter; workspaceName: string; mayCreate: boolean; role: string; templates: TemplateChoice[]; actions: ListActions };
+type Props = { list: ScenarioList; filter: ScenarioFilter; pageSize: number; workspaceName: string; mayCreate: boolean; role: Role; templates: TemplateChoice[]; actions: ListActions };
 
-const NO_RIGHT = (role: string) => `As a ${role} you cannot make scenarios here; duplicate one that you may open.`;
+const barredFor = (role: Role) => `The role ${ROLE_WORDS[role].name.toLowerCase()} does not make scenarios here. You can duplicate one that you may open.`;
 
-/** The scenarios of a workspace: find, open, duplicate, archive; make and import. */
-export function ScenarioTable({ list, filter, workspaceName, mayCreate, role, templates, actions }: Props) {
-  const router = useRouter();
+/** The scenarios of a workspace: find, open, duplicate, export, archive; make and import. */
+export function ScenarioTable({ list, filter, pageSize, workspaceName, mayCreate, role, templates, actions }: Props) {
   const [opened, setOpened] = useState<"new" | "import" | null>(null);
-  const [toast, setToast] = useState<ToastContent | null>(null);
+  const [areKeysOn, setKeysOn] = useKeptSwitch("slackwater.list-keys");
+  const { deeds, toast, clearToast } = useListDeeds(actions);
   const { rows, counts } = list;
-
-  async function duplicate(row: ScenarioRow) {
-    const result = await actions.duplicateScenario({ scenarioId: row.id });
-    if (result.ok) router.push(`/scenarios/${result.value.id}`);
-    else setToast({ text: errorText(result.code) });
-  }
-  async function setArchived(row: ScenarioRow, isArchived: boolean) {
-    const result = await (isArchived ? actions.archiveScenario : actions.restoreScenario)({ scenarioId: row.id });
-    if (!result.ok) return setToast({ text: errorText(result.code) });
-    setToast({ text: `${isArchived ? "Archived" : "Restored"} “${row.title}”`, undo: () => void setArchived(row, !isArchived) });
-    router.refresh();
-  }
-
-  const [current, setCurrent] = useListKeys(rows, { onNew: () => mayCreate && setOpened("new"), onDuplicate: duplicate, onOpen: (row) => router.push(`/scenarios/${row.id}`) });
-  const scaleA = Math.max(...rows.map((row) => row.summary?.scaleA ?? 0), 0);
-  const errorScaleA = 0.02 * scaleA || 1;
+  const [current, setCurrent] = useListKeys(rows, areKeysOn, { ...deeds, onNew: () => mayCreate && setOpened("new") });
+  const disabledReason = mayCreate ? undefined : barredFor(role);
+  const nowMs = useNow();
+  const scale = scaleOf(rows);
   return (
-    <div className="flex grow flex-col px-8 pt-6 max-[719px]:px-4">
-      <div className="flex flex-wrap items-baseline gap-x-4 gap-y-2">
-        <h1>Scenarios</h1>
-        <p className="grow text-ink3">
+    <div className="flex grow flex-col px-8 pt-5 max-[719px]:px-4">
+      <div className="flex flex-wrap items-end gap-x-[14px] gap-y-2">
+        <h1 className="text-[32px]/[36px] max-[719px]:text-[27px]/[32px]">Scenarios</h1>
+        <p className="grow pb-[5px] text-ink3 max-[719px]:pb-[3px]">
           {counts.all} in {workspaceName}
           {counts.inReview > 0 && ` · ${counts.inReview} in review`}
         </p>
-        <Button disabledReason={mayCreate ? undefined : NO_RIGHT(role)} onClick={() => setOpened("import")}>
-          Import…
-        </Button>
-        <Button kind="primary" disabledReason={mayCreate ? undefined : NO_RIGHT(role)} onClick={() => setOpened("new")}>
-          New scenario
-        </Button>
+        <span className="flex gap-3 max-[719px]:w-full max-[719px]:*:grow max-[719px]:*:justify-center">
+          <Button className="h-8!" disabledReason={disabledReason} onClick={() => setOpened("import")}>
+            Import…
+          </Button>
+          <Button className="h-8!" kind="primary" disabledReason={disabledReason} onClick={() => setOpened("new")}>
+            New scenario
+            {mayCreate && areKeysOn && <kbd aria-hidden className="border-current! bg-transparent! text-inherit! opacity-80 max-[999px]:hidden">N</kbd>}
+          </Button>
+        </span>
       </div>
-      <FilterBar list={list} filter={filter} />
+      <FilterBar list={list} filter={filter} areKeysOn={areKeysOn} />
       {rows.length === 0 ? (
         <Nothing filter={filter} mayCreate={mayCreate} onNew={() => setOpened("new")} onImport={() => setOpened("import")} />
       ) : (
-        <table className="almanac mt-4 max-[719px]:block">
-          <thead className="max-[719px]:sr-only">
-            <tr>
-              <th scope="col">Scenario</th>
-              <th scope="col">State</th>
-              <th scope="col" className="max-[999px]:hidden">Owner</th>
-              <th scope="col">Motor current, last run {scaleA > 0 && <span className="u">±{scaleA.toPrecision(2)} A</span>}</th>
-              <th scope="col" className="num!">RMS <span className="u">A</span></th>
-              <th scope="col" className="num! max-[1199px]:hidden">Ripple <span className="u">A p-p</span></th>
-              <th scope="col" className="num! max-[999px]:hidden">Headroom <span className="u">V</span></th>
-              <th scope="col" className="num!">Worst error <span className="u">A</span></th>
-              <th scope="col" className="num!">Changed</th>
-              <th scope="col"><span className="visually-hidden">Actions</span></th>
-            </tr>
-          </thead>
-          <tbody className="max-[719px]:block">
+        <table className="almanac mt-4 mb-6 max-[719px]:block">
+          <Columns scale={scale} />
+          <tbody className="max-[719px]:block max-[719px]:border-t-[3px] max-[719px]:border-double max-[719px]:border-ink">
             {rows.map((row, index) => (
-              <Row key={row.id} row={row} scaleA={scaleA} errorScaleA={errorScaleA} isCurrent={index === current} onPoint={() => setCurrent(index)} onDuplicate={() => void duplicate(row)} onArchive={() => void setArchived(row, !row.isArchived)} />
+              <Row key={row.id} row={row} scale={scale} nowMs={nowMs} isCurrent={index === current} onPoint={() => setCurrent(index)} deeds={deeds} />
             ))}
           </tbody>
         </table>
       )}
-      <footer className="mt-auto flex h-foot items-center gap-4 border-t border-ink text-ink2 max-[719px]:h-14">
-        <span className="grow max-[719px]:hidden">
-          <kbd>J</kbd> <kbd>K</kbd> move &nbsp; <kbd>Enter</kbd> open &nbsp; <kbd>D</kbd> duplicate &nbsp; <kbd>N</kbd> new &nbsp; <kbd>/</kbd> search
-        </span>
-        <Pages list={list} filter={filter} />
-      </footer>
+      <ListFoot list={list} filter={filter} pageSize={pageSize} areKeysOn={areKeysOn} onKeys={setKeysOn} />
       {opened === "new" && <NewScenario templates={templates} createScenario={actions.createScenario} onClose={() => setOpened(null)} />}
       {opened === "import" && <ImportScenario createScenario={actions.createScenario} onClose={() => setOpened(null)} />}
-      <Toast content={toast} onDone={() => setToast(null)} />
+      <Toast content={toast} onDone={clearToast} />
     </div>
   );
 }
 
-function Pages({ list, filter }: { list: ScenarioList; filter: ScenarioFilter }) {
-  const first = (list.page - 1) * 50 + 1;
+function Columns({ scale }: { scale: SparkScale }) {
+  const { lowA, highA } = scale;
   return (
-    <span className="flex gap-4">
-      {list.total > 0 && `${first}–${first + list.rows.length - 1} of ${list.total}`}
-      {list.page > 1 && <Link href={filterHref(filter, { page: list.page - 1 })}>Previous</Link>}
-      {list.page < list.pageCount && <Link href={filterHref(filter, { page: list.page + 1 })}>Next</Link>}
-    </span>
+    <thead className="max-[719px]:sr-only">
+      <tr>
+        <th scope="col">Scenario</th>
+        <th scope="col">State</th>
+        <th scope="col" className="max-[999px]:hidden">Owner</th>
+        <th scope="col">
+          Motor current, last run{" "}
+          {highA > lowA && (
+            <span className="u">
+              {lowA < 0 ? `${MINUS}${(-lowA).toPrecision(2)}` : "0"} to {highA.toPrecision(2)} A
+            </span>
+          )}
+        </th>
+        <th scope="col" className="num">RMS <span className="u">A</span></th>
+        <th scope="col" className="num max-[1199px]:hidden">Ripple <span className="u">A p-p</span></th>
+        <th scope="col" className="num max-[999px]:hidden">Headroom <span className="u">V</span></th>
+        <th scope="col" className="num">Worst error <span className="u">A<span className="max-[1199px]:hidden">, limit at the marks</span></span></th>
+        <th scope="col" className="num">Changed</th>
+        <th scope="col"><span className="visually-hidden">Actions</span></th>
+      </tr>
+    </thead>
   );
 }
 
-function Nothing({ filter, mayCreate, onNew, onImport }: { filter: ScenarioFilter; mayCreate: boolean; onNew: () => void; onImport: () => void }) {
-  const isFiltered = Boolean(filter.search || filter.owner || filter.state || filter.tag || filter.archived);
-  return (
-    <div className="mt-4 border-t-[3px] border-double border-ink py-10">
-      <p className="font-serif text-[20px]/[28px]">{isFiltered ? "Nothing matches these filters." : "No scenarios yet."}</p>
-      <p className="mt-4 flex gap-3">
-        {isFiltered ? (
-          <Link className="button" data-kind="primary" href="/scenarios">
-            Clear the filters
-          </Link>
-        ) : mayCreate ? (
-          <>
-            <Button kind="primary" onClick={onNew}>
-              Start from a template
-            </Button>
-            <Button onClick={onImport}>Import…</Button>
-          </>
-        ) : (
-          <span className="text-ink2">Approved scenarios of your workspace appear here.</span>
-        )}
-      </p>
-    </div>
-  );
+/** One scale for the sparks of a page, so that they compare; a little above zero where all of them are reverse. */
+function scaleOf(rows: readonly ScenarioRow[]): SparkScale {
+  const sparks = rows.flatMap((row) => (row.summary ? [row.summary.spark] : []));
+  return { lowA: Math.min(0, ...sparks.flatMap((spark) => spark.minA)), highA: Math.max(0, ...sparks.flatMap((spark) => spark.maxA)) };
 }

@@ -1,31 +1,39 @@
 import { useId } from "react";
 
-const WIDTH = 190;
-const HEIGHT = 34;
+const WIDTH = 196;
+const HEIGHT = 44;
+const MARGIN = 2;
 
-type Props = { minA: number[]; maxA: number[]; scaleA: number; label: string };
+/** The currents a list's sparks are drawn between; zero lies inside. */
+export type SparkScale = { lowA: number; highA: number };
+
+type Props = { minA: number[]; maxA: number[]; scale: SparkScale; label: string };
 
 /** The motor current of a run in small: forward solid above the line, reverse ruled below it, on a scale shared by the list. */
-export function Spark({ minA, maxA, scaleA, label }: Props) {
+export function Spark({ minA, maxA, scale, label }: Props) {
   const id = useId();
-  const n = maxA.length;
-  const x = (i: number) => (WIDTH * i) / Math.max(n - 1, 1);
-  const y = (a: number) => HEIGHT / 2 - (a / (scaleA || 1)) * (HEIGHT / 2 - 2);
+  const spanA = scale.highA - scale.lowA || 1;
+  const x = (i: number) => ((WIDTH * i) / Math.max(maxA.length - 1, 1)).toFixed(1);
+  const y = (a: number) => (MARGIN + ((scale.highA - a) / spanA) * (HEIGHT - 2 * MARGIN)).toFixed(1);
   const middle = maxA.map((high, i) => 0.5 * (high + minA[i]!));
-  const edge = (clip: (a: number) => number) => middle.map((a, i) => `${x(i).toFixed(1)},${y(clip(a)).toFixed(1)}`).join("L");
-  const closed = (clip: (a: number) => number) => `M0,${HEIGHT / 2}L${edge(clip)}L${WIDTH},${HEIGHT / 2}Z`;
+  const edge = (clip: (a: number) => number) => `M${middle.map((a, i) => `${x(i)} ${y(clip(a))}`).join("L")}`;
+  const zero = y(0);
+  const forward = edge((a) => Math.max(a, 0));
+  const reverse = edge((a) => Math.min(a, 0));
+  const closed = (line: string) => `${line}L${WIDTH} ${zero}L0 ${zero}Z`;
   return (
-    <svg width={WIDTH} height={HEIGHT} viewBox={`0 0 ${WIDTH} ${HEIGHT}`} role="img" aria-label={label} className="max-w-full">
+    <svg width={WIDTH} height={HEIGHT} viewBox={`0 0 ${WIDTH} ${HEIGHT}`} role="img" aria-label={label} className="block max-w-full">
       <defs>
-        <pattern id={id} width="6" height="4" patternUnits="userSpaceOnUse">
-          <rect width="6" height="4" fill="var(--rev-tint)" />
-          <path d="M0 2h6" stroke="var(--rev)" strokeWidth="1" />
+        <pattern id={id} width="6" height="3" patternUnits="userSpaceOnUse">
+          <rect width="6" height="3" fill="var(--rev-fill)" opacity="0.42" />
+          <path d="M0 .5H6" stroke="var(--rev)" strokeWidth="0.8" opacity="0.75" />
         </pattern>
       </defs>
-      <path d={closed((a) => Math.max(a, 0))} fill="var(--fwd-fill)" />
-      <path d={closed((a) => Math.min(a, 0))} fill={`url(#${id})`} />
-      <path d={`M${edge((a) => a)}`} fill="none" stroke="var(--ink2)" strokeWidth="1" />
-      <path d={`M0 ${HEIGHT / 2}H${WIDTH}`} stroke="var(--edge)" strokeWidth="0.8" />
+      <path d={closed(forward)} fill="var(--fwd-fill)" opacity="0.72" />
+      <path d={closed(reverse)} fill={`url(#${id})`} />
+      <path d={forward} fill="none" stroke="var(--fwd)" strokeWidth="1.2" strokeLinejoin="round" />
+      <path d={reverse} fill="none" stroke="var(--rev)" strokeWidth="1.2" strokeLinejoin="round" />
+      <path d={`M0 ${zero}H${WIDTH}`} stroke="var(--ink2)" strokeWidth="1" />
     </svg>
   );
 }

@@ -156,7 +156,7 @@ function Value({ value, decimals, isSigned = false }: { value: number | null; de
 function SampleMark({ sample }: { sample: EventRow["sample"] }) {
   if (sample === null || sample.isMiss === null) return null;
   return (
-    <svg width="10" height="10" viewBox="0 0 10 10" role="img" aria-label={sample.isMiss ? "misses the current" : "within its limit"}>
+    <svg className="inline" width="10" height="10" viewBox="0 0 10 10" role="img" aria-label={sample.isMiss ? "misses the current" : "within its limit"}>
       {sample.isMiss ? <path d="M1.5 1.5l7 7m0 -7l-7 7" stroke="currentColor" strokeWidth="2" /> : <path d="M5 1l4 4-4 4-4-4z" fill="none" stroke="currentColor" strokeWidth="1.3" />}
     </svg>
   );

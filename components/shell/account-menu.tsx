@@ -1,10 +1,10 @@
 "use client";
 
-import { DropdownMenu } from "radix-ui";
-import Link from "next/link";
 import { useRouter } from "next/navigation";
 import { useTransition } from "react";
+import { Menu, MenuItem, MenuLabel, MenuLink, MenuRule } from "@/components/ui/menu";
 import type { WorkspaceView } from "@/db/queries/people";
+import { ROLE_WORDS } from "@/lib/access/table";
 
 const initialsOf = (name: string) =>
   name
@@ -13,8 +13,6 @@ const initialsOf = (name: string) =>
     .slice(0, 2)
     .join("");
 
-const ITEM = "flex w-full items-center gap-2 px-3 py-[7px] no-underline outline-none data-[highlighted]:bg-ink data-[highlighted]:text-on-ink max-[719px]:py-3";
-
 type Props = { userName: string; workspaces: WorkspaceView[]; workspaceId: string; onChooseWorkspace: (id: string) => Promise<void>; onSignOut: () => Promise<void> };
 
 /** Person and workspace: switch workspace, account, sign out. */
@@ -22,42 +20,38 @@ export function AccountMenu({ userName, workspaces, workspaceId, onChooseWorkspa
   const router = useRouter();
   const [isBusy, start] = useTransition();
   const here = workspaces.find((one) => one.id === workspaceId);
+  const open = (id: string) =>
+    start(async () => {
+      await onChooseWorkspace(id);
+      router.push("/scenarios");
+      router.refresh();
+    });
   return (
-    <DropdownMenu.Root>
-      <DropdownMenu.Trigger className="button" data-kind="quiet" aria-busy={isBusy} aria-label={`${userName}, ${here?.name ?? ""}: account and workspace`}>
-        <span aria-hidden className="grid size-[26px] place-items-center rounded-full border border-edge bg-sheet text-[10.5px] font-semibold text-ink2">
-          {initialsOf(userName)}
-        </span>
-        <span className="text-ink2 max-[899px]:hidden">{userName}</span>
-      </DropdownMenu.Trigger>
-      <DropdownMenu.Portal>
-        <DropdownMenu.Content align="end" sideOffset={6} className="z-30 min-w-60 border border-ink bg-sheet py-1">
-          <DropdownMenu.Label className="caps px-3 pt-2 pb-1">Workspace</DropdownMenu.Label>
-          {workspaces.map((workspace) => (
-            <DropdownMenu.Item
-              key={workspace.id}
-              className={ITEM}
-              onSelect={() =>
-                start(async () => {
-                  await onChooseWorkspace(workspace.id);
-                  router.push("/scenarios");
-                  router.refresh();
-                })
-              }
-            >
-              <span className="grow">{workspace.name}</span>
-              <span className="opacity-80">{workspace.id === workspaceId ? `${workspace.role}, open` : workspace.role}</span>
-            </DropdownMenu.Item>
-          ))}
-          <DropdownMenu.Separator className="my-1 border-t border-rule" />
-          <DropdownMenu.Item asChild className={ITEM}>
-            <Link href="/account">Account and sessions</Link>
-          </DropdownMenu.Item>
-          <DropdownMenu.Item className={ITEM} onSelect={() => start(() => onSignOut())}>
-            Sign out
-          </DropdownMenu.Item>
-        </DropdownMenu.Content>
-      </DropdownMenu.Portal>
-    </DropdownMenu.Root>
+    <Menu
+      trigger={
+        <button type="button" className="button" data-kind="quiet" aria-busy={isBusy} aria-label={`${userName}, ${here?.name ?? ""}: account and workspace`}>
+          <span aria-hidden className="grid size-[26px] place-items-center rounded-full border border-edge bg-sheet text-[10.5px] font-semibold text-ink2">
+            {initialsOf(userName)}
+          </span>
+          <span className="text-ink2 max-[899px]:hidden">{userName}</span>
+        </button>
+      }
+    >
+      <MenuLabel>Workspace</MenuLabel>
+      {workspaces.map((workspace) => (
+        <MenuItem key={workspace.id} onSelect={() => open(workspace.id)}>
+          <span className="flex gap-6">
+            <span className="grow">{workspace.name}</span>
+            <span className="opacity-80">
+              {ROLE_WORDS[workspace.role].name}
+              {workspace.id === workspaceId && ", open"}
+            </span>
+          </span>
+        </MenuItem>
+      ))}
+      <MenuRule />
+      <MenuLink href="/account">Account and sessions</MenuLink>
+      <MenuItem onSelect={() => start(() => onSignOut())}>Sign out</MenuItem>
+    </Menu>
   );
 }

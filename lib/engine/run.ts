@@ -94,7 +94,7 @@ export class Run {
     this.monitor = new RunMonitor(machine, bank, this.log);
     const always: Observer[] = [...machine.observers, this.monitor];
     if (!this.isPreparing) {
-      if (this.options.traces) always.push((this.overview = this.makeOverview()));
+      if (this.options.traces && machine.periodCount > REPLAY_PERIODS_MAX) always.push((this.overview = this.makeOverview()));
     }
     // conversions and figures cost nothing outside their stretch of the run
     const measuring = [...always, this.sampler, this.meter];
@@ -109,10 +109,9 @@ export class Run {
     this.leaper = new PeriodLeaper(machine, bank, this.monitor);
   }
 
-  /** A column per cell of the grid, or finer for runs that are short enough to run in detail throughout. */
+  /** A column per cell of the grid: what views too wide to be replayed are drawn from. */
   private makeOverview(): EnvelopeRecorder {
-    const { machine, bank, document } = this;
-    if (this.gridStep <= LEAST_CELL_PERIODS) return new EnvelopeRecorder(machine, bank, 0, document.run.durationS, 4 * GRID_CELLS);
+    const { machine, bank } = this;
     const columnCount = Math.ceil(machine.periodCount / this.gridStep);
     return new EnvelopeRecorder(machine, bank, 0, (columnCount * this.gridStep) / machine.frequencyHz, columnCount);
   }

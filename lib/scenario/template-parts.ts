@@ -45,7 +45,7 @@ const generalAmplifier = (): ScenarioDocument["sensing"]["amplifier"] => ({
   offsetDriftVPerK: 8e-7,
   biasA: 2e-7,
   bandwidthHz: 480000,
-  slewVPerS: 2.5e6,
+  slewVPerS: 6e6,
   outputMinV: 0,
   outputMaxV: 3.3,
   cmrrDb: 126,

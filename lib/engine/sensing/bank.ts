@@ -2,7 +2,7 @@ import type { ScenarioDocument } from "../../scenario/schema";
 import { isHighState, isLowState, LEG_THROUGH } from "../model/legs";
 import { SAME_INSTANT_S } from "../model/parameters";
 import type { EventLog } from "../solver/event-log";
-import { bracketedRoot } from "../solver/locate";
+import { bracketedRoot, EXTREMUM_SHARE } from "../solver/locate";
 import { AT_POLE1, AT_POLE2, buildOperator, OPERATOR_LENGTH } from "../solver/operator";
 import { PIECE_LENGTH, PIECE_RIDER_EVENT, PIECE_START, type ModeSlot, type PowerStage } from "../solver/power-stage";
 import type { Rider } from "../solver/rider";
@@ -22,6 +22,8 @@ const CLIP_BAND_V = 1e-11;
 /** Largest |lambda| h of a piece of a commutation ramp: interpolation error below 1e-8 of the current's change. */
 const RAMP_RATE = 0.25;
 const RAMP_PIECES_MAX = 16;
+/** Twice the share of its value by which the current may change before a period with a kink is surveyed anew. */
+const KINK_REACH = 0.2;
 const WEIGHT_RING = 6;
 /** Parts of a piece in which the slope of an output is looked at for extrema. */
 const EXTREMUM_SCAN = 8;
@@ -163,9 +165,10 @@ export class SensorBank implements Rider {
     const h = stage.piece[PIECE_LENGTH]!;
     this.lengthS[0] = h;
     const sense = this.rows(stage.slot);
-    const hasSlew = this.chain.slewVPerS !== Infinity;
+    this.hasKink = false;
     if (this.isRamp) this.fillNodes(stage, sense, h);
     const isSteady = this.boundInputs(stage, sense);
+    const hasSlew = this.chain.slewVPerS !== Infinity && this.maySlew();
     if (hasSlew) this.classifySlew(stage, sense);
     this.isRegular = isSteady && !hasSlew && this.staysInside();
     if (this.isRegular) {
@@ -176,9 +179,24 @@ export class SensorBank implements Rider {
     this.compute(stage, sense, operator, true);
     // the clip class needs z at the end, which no clip changes; y does when the filter follows a clipped pin
     if (this.classifyClips() && this.holdsPin) this.compute(stage, sense, operator, true);
-    const eventS = this.firstEvent(stage, sense, h);
+    const eventS = this.firstEvent(stage, sense, h, hasSlew);
     stage.piece[PIECE_RIDER_EVENT] = eventS;
     return eventS >= 0;
+  }
+
+  /** Some output is at its slew limit, or could come to it: its pole's drive is at most the spread of its input and state. */
+  private maySlew(): boolean {
+    for (let k = 0; k < 3; k++) if (this.isUsed[k] && (this.slewing[k] !== 0 || this.slewMarginV(k) < 0)) return true;
+    return false;
+  }
+
+  /** What is left between the largest drive of output k in this piece and the one at which it slews, V. */
+  private slewMarginV(k: number): number {
+    const { chain } = this;
+    const z = this.z[k]!;
+    const high = z > this.inputMax[k]! ? z : this.inputMax[k]!;
+    const low = z < this.inputMin[k]! ? z : this.inputMin[k]!;
+    return ((1 - SLEW_BAND) * chain.slewVPerS) / chain.poles.amplifierRadPerS - (high - low);
   }
 
   /** No output can reach a limit in this piece. */
@@ -382,7 +400,7 @@ export class SensorBank implements Rider {
       response[2 * leg + 1] = two;
       return;
     }
-    this.isRegular = false;
+    this.hasKink = true;
     this.eachPositive(leg, (from, to) => segmentResponse(this.chain.poles, this.monomials, from, to, h, response, 2 * leg));
   }
 
@@ -470,7 +488,7 @@ export class SensorBank implements Rider {
     return 0;
   }
 
-  private firstEvent(stage: PowerStage, sense: Float64Array, h: number): number {
+  private firstEvent(stage: PowerStage, sense: Float64Array, h: number, hasSlew: boolean): number {
     let firstS = -1;
     const { chain } = this;
     if (chain.isUnipolar && !this.isRamp) {
@@ -480,7 +498,7 @@ export class SensorBank implements Rider {
     for (let k = 0; k < 3; k++) {
       if (!this.isUsed[k]) continue;
       firstS = earlier(firstS, this.clipEvent(k, stage, sense, h));
-      if (chain.slewVPerS !== Infinity) firstS = earlier(firstS, this.slewEvent(k, stage, sense, h));
+      if (hasSlew) firstS = earlier(firstS, this.slewEvent(k, stage, sense, h));
     }
     if (firstS >= 0) stage.crossings++;
     return firstS;
@@ -592,7 +610,7 @@ export class SensorBank implements Rider {
       this.probe(stage, sense, tau);
       out[0] = this.probedSlope(k, stage, sense, tau);
       out[1] = 0;
-    }, 0, slope0, h, slope1);
+    }, 0, slope0, h, slope1, EXTREMUM_SHARE * h);
     this.probe(stage, sense, peakS);
     const peak = this.unclippedV(k, this.zEnd, this.yEnd);
     const atS = sign * (peak - limitV) > CLIP_BAND_V ? this.outputRoot(k, limitV, stage, sense, peakS, peak) : -1;
@@ -763,7 +781,7 @@ export class SensorBank implements Rider {
         const atS = bracketedRoot((tau, out) => {
           out[0] = slopeAt(tau);
           out[1] = 0;
-        }, fromS, from, toS, to);
+        }, fromS, from, toS, to, 1e-4 * h);
         this.probe(stage, sense, atS);
         this.zAt.set(this.zEnd);
         this.yAt.set(this.yEnd);
@@ -814,12 +832,18 @@ export class SensorBank implements Rider {
   /** No rectifier, clip or part of a ramp behaves other than linearly in the piece tried last. */
   isRegular = true;
 
+  /** A rectifier cuts off inside the ramp: its response bends with the current, by the square of the change. */
+  private hasKink = false;
+
   /** Pushes what must keep its sign for the piece tried last to stay regular. */
-  pushGuards(out: number[]): void {
+  pushGuards(stage: PowerStage, out: number[]): void {
     const { chain } = this;
+    // a tenth of the current at most: the bend is then below a hundred-thousandth of full scale, and dies with the filters
+    if (this.hasKink) out.push(KINK_REACH * stage.x[0]!);
     if (this.isRamp && chain.isUnipolar) for (let n = 0; n < (chain.isLegSite ? 2 : 1) * NODE_COUNT; n++) out.push(this.nodes[n]!);
     if (!this.isRamp && chain.isUnipolar) for (let n = 0; n < 4; n++) out.push(this.rawEnds[n]!);
     for (let k = 0; k < 3; k++) {
+      if (this.isUsed[k] && chain.slewVPerS !== Infinity) out.push(this.slewMarginV(k));
       if (this.isUsed[k]) out.push(chain.outputMaxV + CLIP_V - this.base[k]! - this.inputMax[k]!, this.inputMin[k]! + this.base[k]! - chain.outputMinV + CLIP_V);
     }
   }

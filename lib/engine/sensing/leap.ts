@@ -30,7 +30,7 @@ class GuardSurvey implements Observer {
     this.values.push(stage.x[0]!, stage.xEnd[0]!);
     if (isDiodeState(mode.legA) || isDiodeState(mode.legB)) this.values.push(0.5 * stage.x[0]! + 0.5 * stage.xEnd[0]!);
     stage.pushGuards(this.values);
-    this.bank.pushGuards(this.values);
+    this.bank.pushGuards(stage, this.values);
     this.monitor.pushGuards(this.values);
   }
 }
@@ -52,7 +52,7 @@ type Reference = {
  * Leaps over whole PWM periods. Where a period passes without an event its effect on power stage and filters is one affine
  * map of the state at its start, and so is every guard; a survey finds both by running the period from neighbouring states.
  * Later periods of the same pattern are then one small product each, exact to rounding, as long as no guard can change
- * sign. Not used with winding temperature, fan loads, slew limits or rising friction, whose maps are not affine.
+ * sign. Not used with winding temperature, fan loads or rising friction, whose maps are not affine.
  */
 export class PeriodLeaper {
   private reference: Reference | null = null;
@@ -65,7 +65,7 @@ export class PeriodLeaper {
   constructor(private readonly machine: Machine, private readonly bank: SensorBank, private readonly monitor: RunMonitor) {
     const { document } = machine;
     const isPlain = document.load.kind !== "motor" || (!document.load.motor.thermal && document.load.shaft.every((entry) => entry.kind !== "fan"));
-    this.isPossible = isPlain && document.faults.every((fault) => fault.kind !== "risingFriction") && bank.chain.slewVPerS === Infinity;
+    this.isPossible = isPlain && document.faults.every((fault) => fault.kind !== "risingFriction");
     const { amplifierRadPerS: p, filterRadPerS: q } = bank.chain.poles;
     const ep = Math.exp(-p * machine.periodS);
     const eq = q > 0 ? Math.exp(-q * machine.periodS) : 0;

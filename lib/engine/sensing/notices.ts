@@ -4,7 +4,7 @@ import type { Conversion, Notice, Simulation } from "../results";
 import type { Excess, RunMonitor } from "./monitor";
 
 const text = (value: number, unit: string) => formatQuantity(value, unit).text;
-const percent = (share: number) => `${(100 * share).toPrecision(2)} %`;
+const percent = (share: number) => `${Number((100 * share).toPrecision(2))} %`;
 
 /** Bus voltages above this are shown with the high-voltage cautions: the usual limit of extra-low voltage, common practice. */
 const LOW_VOLTAGE_LIMIT_V = 60;

@@ -3,6 +3,8 @@ import { stateAfter, type Spectrum } from "./spectrum";
 
 /** A Newton step below this ends the search: three decades inside the 1e-12 s that model.md section 8 asks for. */
 const LOCATE_S = 1e-15;
+/** An extremum located to this share of the piece is right to the square of it. */
+export const EXTREMUM_SHARE = 1e-7;
 const SCRATCH = new Float64Array(3);
 
 /** Value of the row [c0 c1 c2 | c3] at the state x. */
@@ -20,7 +22,7 @@ export function rowSlope(row: Float64Array, { a, b }: AffineMode, x: Float64Arra
  * Root of f on [lo, hi], f(lo) and f(hi) of opposite sign: Newton steps kept inside the bracket, bisection where they
  * leave it or where no slope is given. `f` writes value and slope (0: unknown) to `at`.
  */
-export function bracketedRoot(f: (tauS: number, at: Float64Array) => void, lo: number, valueLo: number, hi: number, valueHi: number): number {
+export function bracketedRoot(f: (tauS: number, at: Float64Array) => void, lo: number, valueLo: number, hi: number, valueHi: number, toleranceS = LOCATE_S): number {
   if (valueHi === 0) return hi;
   const at = new Float64Array(2);
   const isLoPositive = valueLo > 0;
@@ -33,7 +35,7 @@ export function bracketedRoot(f: (tauS: number, at: Float64Array) => void, lo: n
     if (value > 0 === isLoPositive) lo = tau;
     else hi = tau;
     const step = at[1] !== 0 ? value / at[1]! : Infinity;
-    if (Math.abs(step) <= LOCATE_S || hi - lo <= LOCATE_S) {
+    if (Math.abs(step) <= toleranceS || hi - lo <= toleranceS) {
       const last = tau - step;
       return last > lo && last < hi ? last : tau;
     }
@@ -86,7 +88,7 @@ function slopeRoot(row: Float64Array, mode: AffineMode, spectrum: Spectrum, x0: 
     stateAfter(mode, spectrum, x0, tau, SCRATCH);
     at[0] = rowSlope(row, mode, SCRATCH);
     at[1] = 0;
-  }, 0, slope0, h, slope1);
+  }, 0, slope0, h, slope1, EXTREMUM_SHARE * h);
 }
 
 /** State at which the row has an extremum inside (0, h), or null; the returned array is overwritten at the next call. */
