@@ -60,6 +60,7 @@ function matches(scope: Scope, filter: ScenarioFilter): SQL | undefined {
       ? or(
           ilike(scenarios.title, pattern),
           sql`exists (select from unnest(${scenarios.tags}) as tag where tag ilike ${pattern})`,
+          sql`exists (select from ${users} where ${users.id} = ${scenarios.ownerId} and ${users.name} ilike ${pattern})`,
         )
       : undefined,
     owner === undefined ? undefined : isKey(owner) ? eq(scenarios.ownerId, owner) : sql`false`,

@@ -14,6 +14,8 @@ export type RunSummary = {
   headroomV: number | null;
   clippedShare: number;
   reconstructionErrorMaxA: number | null;
+  /** A sample farther off than this misses the current. Revisions saved before it was kept have none. */
+  errorLimitA?: number;
   spark: { fromS: number; toS: number; minA: number[]; maxA: number[] };
   /** The largest magnitude in the spark: the scale it is drawn to. */
   scaleA: number;

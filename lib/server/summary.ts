@@ -1,5 +1,6 @@
 import type { RunSummary } from "@/db/queries/scenarios";
 import { createRun } from "@/lib/engine/index";
+import { sampleLimitA } from "@/lib/engine/sensing/notices";
 import type { ScenarioDocument } from "@/lib/scenario/schema";
 
 const COLUMN_COUNT = 64;
@@ -31,6 +32,7 @@ export async function summarise(document: ScenarioDocument): Promise<RunSummary 
     headroomV: figures.headroomV === null ? null : round(figures.headroomV),
     clippedShare: round(figures.clippedShare),
     reconstructionErrorMaxA: figures.reconstructionErrorMaxA === null ? null : round(figures.reconstructionErrorMaxA),
+    errorLimitA: round(sampleLimitA(document)),
     spark: { fromS: 0, toS: durationS, minA, maxA },
     scaleA: round(Math.max(...maxA.map(Math.abs), ...minA.map(Math.abs))),
   };

@@ -58,6 +58,10 @@ describe("the scenario table", () => {
     expect(list.rows[1]).toMatchObject({ state: "approved", mayEdit: true, mayArchive: false });
   });
 
+  it("searches by the name of the owner too", async () => {
+    expect(await titles({ search: "the LEAD" })).toEqual(["Weir_drive"]);
+  });
+
   it("searches titles and tags, taking % and _ for themselves", async () => {
     expect(await titles({ search: "WEIR" })).toEqual(["Weir_drive"]);
     expect(await titles({ search: "24" })).toEqual(["Gate 50 % open"]);

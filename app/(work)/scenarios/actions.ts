@@ -3,6 +3,7 @@
 import { revalidatePath } from "next/cache";
 import { db } from "@/db/client";
 import type { Result } from "@/lib/result";
+import type { ScenarioDocument } from "@/lib/scenario/schema";
 import { getScope } from "@/lib/server/actor";
 import * as deeds from "@/lib/server/deeds/scenarios";
 
@@ -20,6 +21,11 @@ export async function duplicateScenario(input: {
   title?: string;
 }): Promise<Result<{ id: string }>> {
   return refreshed(await deeds.duplicateScenario(db, await getScope(), input));
+}
+
+/** The document of the revision that the person sees, to be exported. */
+export async function readDocument(input: { scenarioId: string }): Promise<Result<ScenarioDocument>> {
+  return deeds.readDocument(db, await getScope(), input);
 }
 
 export async function archiveScenario(input: { scenarioId: string }): Promise<Result<null>> {

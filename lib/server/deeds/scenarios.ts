@@ -78,6 +78,14 @@ export const duplicateScenario = defineDeed({
   }),
 });
 
+/** The document of the revision that the person sees. */
+export const readDocument = defineDeed({
+  deed: "scenario.read",
+  input: oneScenario,
+  thing: (tx, scope, input) => requireScenarioThing(tx, scope, input.scenarioId),
+  run: async ({ tx, scope, input }) => success((await requireScenario(tx, scope, input.scenarioId)).revision.document),
+});
+
 export const renameScenario = defineDeed({
   deed: "scenario.rename",
   input: oneScenario.extend({ title: titleField }),
