@@ -146,12 +146,12 @@ export class Run {
   }
 
   /**
-   * First period from here that must run in detail: the first two of each grid cell (checkpoint, envelope) and those that
-   * are measured. It depends on the document alone, so that every caller gets the same numbers to the bit.
+   * First period from here that must run in detail: the first of each grid cell (checkpoint, envelope) and those that are
+   * measured. It depends on the document alone, so that every caller gets the same numbers to the bit.
    */
   private leapLimit(): number {
     const { period } = this.machine;
-    if (period % this.gridStep < 2 || (period >= this.firstMeasured && period <= this.lastMeasured)) return period;
+    if (period % this.gridStep === 0 || (period >= this.firstMeasured && period <= this.lastMeasured)) return period;
     const cellEnd = (Math.floor(period / this.gridStep) + 1) * this.gridStep;
     return period < this.firstMeasured ? Math.min(cellEnd, this.firstMeasured) : cellEnd;
   }
