@@ -1,5 +1,6 @@
 "use client";
 
+import Link from "next/link";
 import { Menu, MenuItem, MenuLink } from "@/components/ui/menu";
 import type { ScenarioRow } from "@/db/queries/scenarios";
 
@@ -15,7 +16,9 @@ export function RowMenu({ row, deeds }: { row: ScenarioRow; deeds: RowDeeds }) {
         </button>
       }
     >
-      <MenuLink href={`/scenarios/${row.id}`}>Open</MenuLink>
+      <MenuLink>
+        <Link href={`/scenarios/${row.id}`}>Open</Link>
+      </MenuLink>
       <MenuItem onSelect={() => deeds.onDuplicate(row)} disabledReason={row.mayDuplicate ? undefined : "Your role does not copy this scenario."}>
         Duplicate
       </MenuItem>

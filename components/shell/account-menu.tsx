@@ -1,5 +1,6 @@
 "use client";
 
+import Link from "next/link";
 import { useRouter } from "next/navigation";
 import { useTransition } from "react";
 import { Menu, MenuItem, MenuLabel, MenuLink, MenuRule } from "@/components/ui/menu";
@@ -50,7 +51,9 @@ export function AccountMenu({ userName, workspaces, workspaceId, onChooseWorkspa
         </MenuItem>
       ))}
       <MenuRule />
-      <MenuLink href="/account">Account and sessions</MenuLink>
+      <MenuLink>
+        <Link href="/account">Account and sessions</Link>
+      </MenuLink>
       <MenuItem onSelect={() => start(() => onSignOut())}>Sign out</MenuItem>
     </Menu>
   );

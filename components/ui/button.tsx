@@ -1,20 +1,16 @@
 import type { ButtonHTMLAttributes } from "react";
+import { Tip } from "./tip";
 
 type Props = ButtonHTMLAttributes<HTMLButtonElement> & { kind?: "primary" | "secondary" | "quiet" | "danger"; size?: "large" };
 
-/** A button; with `disabledReason` it stays reachable and says why it does nothing. */
+/** A button; with `disabledReason` it stays reachable, does nothing and says why. */
 export function Button({ kind = "secondary", size, disabledReason, onClick, ...rest }: Props & { disabledReason?: string }) {
-  const isBarred = disabledReason !== undefined;
+  const look = { type: "button" as const, ...rest, className: `button ${rest.className ?? ""}`, "data-kind": kind, "data-size": size };
+  if (disabledReason === undefined) return <button {...look} onClick={onClick} />;
   return (
-    <button
-      type="button"
-      {...rest}
-      className={`button ${rest.className ?? ""}`}
-      data-kind={kind}
-      data-size={size}
-      aria-disabled={isBarred || undefined}
-      title={disabledReason ?? rest.title}
-      onClick={isBarred ? (event) => event.preventDefault() : onClick}
-    />
+    <Tip words={disabledReason}>
+      {/* a form is not sent by a button that is barred */}
+      <button {...look} type="button" aria-disabled aria-description={disabledReason} />
+    </Tip>
   );
 }

@@ -1,7 +1,6 @@
 "use client";
 
 import { DropdownMenu } from "radix-ui";
-import Link from "next/link";
 import type { ReactElement, ReactNode } from "react";
 
 /** A list of deeds under a control: arrows move, a letter jumps, Esc closes and gives the focus back. */
@@ -28,10 +27,11 @@ export function MenuItem({ onSelect, disabledReason, children }: { onSelect: () 
   );
 }
 
-export function MenuLink({ href, children }: { href: string; children: ReactNode }) {
+/** A link, given as the one child, among the deeds. */
+export function MenuLink({ children }: { children: ReactElement }) {
   return (
     <DropdownMenu.Item asChild className="menu-item">
-      <Link href={href}>{children}</Link>
+      {children}
     </DropdownMenu.Item>
   );
 }

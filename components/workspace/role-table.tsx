@@ -21,7 +21,7 @@ export function RoleTable({ ownRole }: { ownRole: Role }) {
         <tbody>
           {DEEDS.map((deed) => (
             <tr key={deed}>
-              <th scope="row" className="border-0! border-b! border-rule! text-[13px]! font-medium! tracking-normal! text-ink! normal-case!">
+              <th scope="row" className="row-head">
                 {DEED_WORDS[deed]}
               </th>
               {ROLES.map((role) => (

@@ -1,7 +1,10 @@
+import { LoadingBorder } from "@/components/shell/loading-border";
+
 /** The page's own frame with empty rows. */
 export default function LoadingAccount() {
   return (
     <div className="px-8 py-6 max-[719px]:px-4" aria-busy="true">
+      <LoadingBorder />
       <h1>Account</h1>
       <p className="sr-only" role="status">
         Loading your account

@@ -1,7 +1,10 @@
+import { LoadingBorder } from "@/components/shell/loading-border";
+
 /** The list's own frame with empty rows: the rules and labels stand at once. */
 export default function LoadingScenarios() {
   return (
     <div className="px-8 py-6 max-[719px]:px-4" aria-busy="true">
+      <LoadingBorder />
       <h1>Scenarios</h1>
       <p className="sr-only" role="status">
         Loading the scenarios

@@ -1,9 +1,12 @@
+import { LoadingBorder } from "@/components/shell/loading-border";
+
 const PARTS = ["Members", "What each role may do", "Audit"];
 
 /** The page's own frame with empty rows. */
 export default function LoadingWorkspace() {
   return (
     <div className="px-8 py-6 max-[719px]:px-4" aria-busy="true">
+      <LoadingBorder />
       <h1>Workspace</h1>
       <p className="sr-only" role="status">
         Loading the workspace
