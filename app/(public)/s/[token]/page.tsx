@@ -1,24 +1,19 @@
 import type { Metadata } from "next";
 import Link from "next/link";
+import { notFound } from "next/navigation";
 import { ScenarioWorkbench } from "@/components/scenario/scenario-workbench";
+import { RefusedLink } from "@/components/share/refused-link";
 import { PublicHead } from "@/components/shell/public-head";
 import { db } from "@/db/client";
-import { errorText, type ErrorCode } from "@/lib/errors";
 import { getAddress } from "@/lib/server/actor";
 import { openShareLinkFrom } from "@/lib/server/share";
 
 export const metadata: Metadata = { title: "Shared scenario", robots: { index: false } };
 
-const REFUSED: Partial<Record<ErrorCode, string>> = {
-  "link.unknown": "This link leads nowhere",
-  "link.expired": "This link has expired",
-  "link.revoked": "This link was withdrawn",
-  "limit.reached": "Too many links tried from here",
-};
-
 export default async function SharedPage({ params }: { params: Promise<{ token: string }> }) {
   const { token } = await params;
   const opened = await openShareLinkFrom(db, await getAddress(), token);
+  if (!opened.ok && opened.code === "link.unknown") notFound();
   if (!opened.ok) return <RefusedLink code={opened.code} />;
   const { title, document, revisionNumber, follows, workspaceName, label } = opened.value;
   return (
@@ -35,26 +30,6 @@ export default async function SharedPage({ params }: { params: Promise<{ token: 
       </p>
       <main id="main" tabIndex={-1} className="flex grow flex-col outline-none">
         <ScenarioWorkbench initial={{ scenarioId: null, personId: null, mode: "guest", title, tags: [], base: { number: revisionNumber, document, savedAtMs: 0, authorName: workspaceName } }} />
-      </main>
-    </div>
-  );
-}
-
-function RefusedLink({ code }: { code: ErrorCode }) {
-  return (
-    <div className="min-h-dvh">
-      <PublicHead />
-      <main id="main" className="mx-auto max-w-xl px-6 py-20">
-        <h1>{REFUSED[code] ?? "This link cannot be opened"}</h1>
-        <p className="mt-3 text-ink2">{errorText(code)}</p>
-        <p className="mt-6 flex gap-3">
-          <Link className="button" data-kind="primary" href="/">
-            See what Slackwater does
-          </Link>
-          <Link className="button" href="/sign-in">
-            Sign in
-          </Link>
-        </p>
       </main>
     </div>
   );
