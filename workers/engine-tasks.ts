@@ -6,6 +6,8 @@ import type { EngineFailure, Outcome, Progress, RunReply, RunRequest } from "./p
 /** Longest stretch of work between two looks at the message queue, ms: half a frame. */
 const SLICE_MS = 8;
 const DEFAULT_COLUMNS = 1200;
+const WARM_RUNS = 6;
+const WARM_SLICE_PERIODS = 4;
 
 const failed = (failure: EngineFailure): Outcome<never> => ({ ok: false, failure });
 
@@ -17,11 +19,21 @@ export class EngineTasks {
   private last: Run | null = null;
   private newest = 0;
 
-  /** `pause` hands the thread back for a moment, so that a newer request or a cancel can arrive. */
-  constructor(private readonly pause: () => Promise<void>, private readonly nowMs: () => number) {}
+  /** `pause` hands the thread back for a moment, so that a newer request or a cancel can arrive. `warmDocument`: see warmUp. */
+  constructor(private readonly pause: () => Promise<void>, private readonly nowMs: () => number, private readonly warmDocument?: RunRequest["document"]) {}
 
   /** Runs a document; a newer call or `cancel` ends it early. The previous run stays until this one is finished. */
   async run(request: RunRequest, onProgress?: (progress: Progress) => void): Promise<Outcome<RunReply>> {
+    this.openCount++;
+    try {
+      return await this.compute(request, onProgress);
+    } finally {
+      this.openCount--;
+      void this.warmUp();
+    }
+  }
+
+  private async compute(request: RunRequest, onProgress?: (progress: Progress) => void): Promise<Outcome<RunReply>> {
     const serial = ++this.newest;
     this.isCancelled = false;
     const parsed = parseScenario(request.document);
@@ -64,11 +76,27 @@ export class EngineTasks {
     this.isCancelled = true;
   }
 
-  /** Runs a small scenario of every kind of interval once, so that the first real one meets compiled code. */
-  warm(document: RunRequest["document"]): void {
-    const run = createRun(document, { traces: true });
-    while (!run.advance(4096)) continue;
-    run.finish();
-    run.view({ fromS: 0, toS: document.run.durationS, columnCount: 600 });
+  /**
+   * Runs a small scenario a few times while nobody waits, so that the runs that follow meet compiled code. Gives way to a
+   * request at once and goes on after it.
+   */
+  async warmUp(): Promise<void> {
+    if (!this.warmDocument || this.isWarming) return;
+    this.isWarming = true;
+    while (this.warmRunsLeft > 0 && this.openCount === 0) {
+      const run = createRun(this.warmDocument, { traces: true });
+      while (this.openCount === 0 && !run.advance(WARM_SLICE_PERIODS)) await this.pause();
+      await this.pause();
+      if (this.openCount > 0) break;
+      run.finish();
+      run.view({ fromS: 0, toS: this.warmDocument.run.durationS, columnCount: 600 });
+      this.warmRunsLeft--;
+      await this.pause();
+    }
+    this.isWarming = false;
   }
+
+  private openCount = 0;
+  private isWarming = false;
+  private warmRunsLeft = WARM_RUNS;
 }
