@@ -41,6 +41,7 @@ export function ImportScenario({ createScenario, onClose }: { createScenario: Li
         type="file"
         aria-label="File"
         accept="application/json,.json"
+        className="max-w-full text-ink2 file:mr-3 file:h-7 file:rounded-control file:border file:border-solid file:border-edge file:bg-sheet file:px-[11px] file:font-medium file:text-ink max-[719px]:file:h-11"
         onChange={async (event) => {
           const file = event.currentTarget.files?.[0];
           if (!file) return;

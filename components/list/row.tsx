@@ -34,7 +34,7 @@ export function Row({ row, scale, nowMs, isCurrent, onPoint, deeds }: Props) {
           {STATE_WORDS[row.state]}
         </span>
       </td>
-      <td className={`${CELL} max-[999px]:hidden max-[719px]:block max-[719px]:text-ink2`}>{row.ownerName}</td>
+      <td className={`${CELL} max-[999px]:hidden whitespace-nowrap max-[719px]:block max-[719px]:text-ink2`}>{row.ownerName}</td>
       <td className={`${CELL} max-[719px]:order-1 max-[719px]:col-span-4`}>
         {summary ? (
           <Spark minA={summary.spark.minA} maxA={summary.spark.maxA} scale={scale} label={`Motor current of the last run, up to ${figure(summary.scaleA, 2)} ampere`} />

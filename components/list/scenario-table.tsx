@@ -55,7 +55,7 @@ export function ScenarioTable({ list, filter, pageSize, workspaceName, mayCreate
       {rows.length === 0 ? (
         <Nothing filter={filter} mayCreate={mayCreate} onNew={() => setOpened("new")} onImport={() => setOpened("import")} />
       ) : (
-        <table className="almanac mt-4 mb-6 max-[719px]:block">
+        <table className="almanac list mt-4 mb-6 max-[719px]:block">
           <Columns scale={scale} />
           <tbody className="max-[719px]:block max-[719px]:border-t-[3px] max-[719px]:border-double max-[719px]:border-ink">
             {rows.map((row, index) => (

@@ -6,32 +6,30 @@ import { Moment } from "./moment";
 /** What was done in the workspace, newest first. `titles` names scenarios that can still be opened. */
 export function AuditTable({ rows, titles }: { rows: AuditRow[]; titles: Map<string, string> }) {
   return (
-    <div className="overflow-x-auto">
-      <table className="almanac">
-        <thead>
-          <tr>
-            <th>When</th>
-            <th>Who</th>
-            <th>What</th>
-            <th>On what</th>
+    <table className="almanac stacked">
+      <thead>
+        <tr>
+          <th>When</th>
+          <th>Who</th>
+          <th>What</th>
+          <th>On what</th>
+        </tr>
+      </thead>
+      <tbody>
+        {rows.map((row) => (
+          <tr key={row.id}>
+            <td>
+              <Moment at={row.createdAt} />
+            </td>
+            <td>{row.actorName}</td>
+            <td title={`Request ${row.correlationId}`}>{doneWords(row.deed, row.detail)}</td>
+            <td>
+              <Thing row={row} titles={titles} />
+            </td>
           </tr>
-        </thead>
-        <tbody>
-          {rows.map((row) => (
-            <tr key={row.id}>
-              <td>
-                <Moment at={row.createdAt} />
-              </td>
-              <td>{row.actorName}</td>
-              <td title={`Request ${row.correlationId}`}>{doneWords(row.deed, row.detail)}</td>
-              <td>
-                <Thing row={row} titles={titles} />
-              </td>
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </div>
+        ))}
+      </tbody>
+    </table>
   );
 }
 

@@ -5,7 +5,7 @@ import { DEED_WORDS, REACH_WORDS } from "./deed-words";
 export function RoleTable({ ownRole }: { ownRole: Role }) {
   const mark = (role: Role) => (role === ownRole ? "bg-sheet font-semibold" : "");
   return (
-    <div className="overflow-x-auto">
+    <div className="overflow-x-auto" role="region" aria-label="What each role may do" tabIndex={0}>
       <table className="almanac">
         <thead>
           <tr>
