@@ -24,6 +24,7 @@ export default defineConfig({
         ...shared,
         test: {
           name: "dom",
+          testTimeout: 30_000,
           environment: "jsdom",
           include: ["tests/unit/**/*.test.tsx", "tests/dom/**/*.test.{ts,tsx}"],
           setupFiles: ["tests/support/dom-setup.ts"],

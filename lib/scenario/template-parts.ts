@@ -33,6 +33,20 @@ export const latchMotor = (): Motor => ({
   locked: false,
 });
 
+/** A published small 12 V motor under a neutral name; tests/unit/engine/measured-motor.test.ts names the source and holds its figures. */
+export const benchMotor = (): Motor => ({
+  resistanceOhm: 0.66667,
+  inductanceH: 0.00035,
+  torqueConstantNmPerA: 0.01556,
+  backEmfVPerRadPerS: 0.018,
+  inertiaKgM2: 4.5e-5,
+  viscousNmPerRadPerS: 4.098953237809476e-5,
+  coulombNm: 0,
+  staticNm: 0,
+  temperatureC: 20,
+  locked: false,
+});
+
 /** Amplifier of ordinary accuracy with a fixed gain of 30. */
 const generalAmplifier = (): ScenarioDocument["sensing"]["amplifier"] => ({
   arrangement: "combinedMidscale",

@@ -1,5 +1,5 @@
 import type { ScenarioDocument } from "./schema";
-import { gateDrive, latchMotor } from "./template-parts";
+import { benchMotor, gateDrive, latchMotor } from "./template-parts";
 
 export type Template = {
   id: string;
@@ -192,6 +192,21 @@ export const TEMPLATES: readonly Template[] = [
       delete document.sensing.amplifier.offsetBV;
       delete document.sensing.reference;
       document.run = { durationS: 0.016, window: { fromS: 0.001, toS: 0.016 } };
+    },
+  ),
+  variant(
+    "bench-motor",
+    "Bench motor M1, start at full voltage",
+    "A small 12 V motor by its published figures, started from rest: nearly its stall current, then less as the speed builds up.",
+    "Constants from published figures of a small brushed 12 V motor: 18 A and 0.28 N·m at stall, 1.6 A and 5800 turns a minute running free. Resistance, torque and back-EMF constants and the drag follow from them; inductance and inertia are typical of its size.",
+    ["measured motor", "start"],
+    (document) => {
+      document.supply = { voltageV: 12, resistanceOhm: 0, busCapacitanceF: 0, acceptsReturn: true };
+      document.load = { kind: "motor", motor: benchMotor(), shaft: [] };
+      document.command.points = [step(0, 1)];
+      document.initial = { currentA: 0, speedRadPerS: 0 };
+      document.sensing.amplifier.gain = { fixed: 20 };
+      document.run = { durationS: 0.02, window: { fromS: 0, toS: 0.02 } };
     },
   ),
 ];
