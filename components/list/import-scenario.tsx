@@ -57,7 +57,7 @@ export function ImportScenario({ createScenario, onClose }: { createScenario: Li
       {problem && (
         <div role="alert" className="mt-3">
           <p className="font-medium text-fault">{problem.text}</p>
-          <ul className="mt-2 max-h-52 overflow-auto border-t border-rule">
+          <ul tabIndex={0} aria-label="What cannot be taken" className="mt-2 max-h-52 overflow-auto border-t border-rule">
             {problem.findings.map((finding) => (
               <li key={`${finding.path} ${finding.code}`} className="border-b border-rule py-1">
                 <code className="text-ink3">{finding.path}</code> {finding.text}

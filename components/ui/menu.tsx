@@ -6,7 +6,7 @@ import type { ReactElement, ReactNode } from "react";
 /** A list of deeds under a control: arrows move, a letter jumps, Esc closes and gives the focus back. */
 export function Menu({ trigger, children }: { trigger: ReactElement; children: ReactNode }) {
   return (
-    <DropdownMenu.Root>
+    <DropdownMenu.Root modal={false}>
       <DropdownMenu.Trigger asChild>{trigger}</DropdownMenu.Trigger>
       <DropdownMenu.Portal>
         <DropdownMenu.Content align="end" sideOffset={6} collisionPadding={8} className="menu">
