@@ -71,7 +71,8 @@ export function formatQuantity(
   if (value === null || value === undefined || !Number.isFinite(value)) {
     return { number: NO_VALUE, unit: base.symbol, text: NO_VALUE, prefix: "" };
   }
-  const magnitude = Math.abs(base.size === 1 ? value : value / base.size);
+  // a number at the very end of the doubles may leave them in a smaller unit: the last double stands for it
+  const magnitude = Math.min(Math.abs(base.size === 1 ? value : value / base.size), Number.MAX_VALUE);
   const forced = options.prefix === undefined ? undefined : PREFIXES.find((prefix) => prefix.symbol === options.prefix);
   // Zero inertia is written "0 kg·m²", not in a unit of its own
   const natural =

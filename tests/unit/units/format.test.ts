@@ -1,3 +1,4 @@
+import { UNITS } from "@/lib/units/unit-table";
 import { describe, expect, test } from "vitest";
 import { formatQuantity, formatRange } from "@/lib/units/format";
 
@@ -59,4 +60,8 @@ test("a range is written with the unit at both ends", () => {
   expect(formatRange(0.1, 2000, "V")).toBe("0.1 V to 2 kV");
   expect(formatRange(1e-6, 10, "Ω")).toBe("1 µΩ to 10 Ω");
   expect(formatRange(-1, 1, "")).toBe("\u22121 to 1");
+});
+
+test("a number at the end of the doubles is written in every unit", () => {
+  for (const unit of Object.keys(UNITS)) expect(formatQuantity(Number.MAX_VALUE, unit).number).toMatch(/\d/);
 });
