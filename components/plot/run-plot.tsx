@@ -80,7 +80,7 @@ export function RunPlot(props: RunPlotProps) {
     if (place.pinS !== pinS) props.onPin(place.pinS);
   };
   const { isInside, onKeyDown } = useRunKeys(rootRef, framesRef, props.areLettersOn ?? true, command);
-  const isScrolling = heightPx === undefined && layout.height > size.height + 1;
+  const isScrolling = layout.height > (heightPx ?? size.height) + 1;
   return (
     <section ref={rootRef} className={styles.plot} role="group" aria-roledescription="run" aria-label="Waveforms of the run" aria-describedby={id} tabIndex={0} onKeyDown={onKeyDown} data-stale={props.isStale || undefined}>
       <p id={id} className={styles.srOnly}>
