@@ -41,7 +41,7 @@ test("a designer makes a scenario, tunes it, saves it and shares it; a guest pla
   await page.goto("/scenarios");
   await page.getByRole("button", { name: "New scenario" }).click();
   const title = "Sluice gate three, trial";
-  await page.getByLabel("Name").fill(title);
+  await page.getByRole("dialog").getByRole("textbox", { name: "Name" }).fill(title);
   await page.getByRole("button", { name: "Make the scenario" }).click();
   await page.waitForURL(/\/scenarios\/[0-9a-f-]{36}/);
 

@@ -39,7 +39,8 @@ describe.each([
         const result = simulate(parsed.document, { at: [0, durationS / 3, durationS] });
         expect(performance.now() - startMs).toBeLessThan(LIMIT_MS);
         expect(notFinite(result, "result").slice(0, 5)).toEqual([]);
-        expect(result.at).toHaveLength(3);
+        // beyond what can be computed the result says so, and has no readings
+        expect(result.at).toHaveLength(result.status === "reached-end" ? 3 : 0);
       }),
       { numRuns: RUNS, seed: 20261202 + weight },
     );
