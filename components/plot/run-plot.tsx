@@ -87,7 +87,7 @@ export function RunPlot(props: RunPlotProps) {
         {HELP}
       </p>
       <PlotControls onCommand={command} hasPin={pinS !== null} lanes={available} shown={shown} onShown={props.onLanes ?? setOwnLanes} tableId={`${id}-table`} isTableOpen={isTableOpen} onTable={setTableOpen} isCompact={isCompact} />
-      <div ref={fieldRef} className={styles.field} {...(isScrolling ? SCROLLING : {})} style={heightPx === undefined ? undefined : { height: heightPx, flex: "none" }}>
+      <div ref={fieldRef} className={styles.field} {...(isScrolling ? SCROLLING : {})} style={{ overflowY: isScrolling ? "auto" : "hidden", ...(heightPx === undefined ? {} : { height: heightPx, flex: "none" }) }}>
         <PlotStage run={props} scene={scene} facts={facts} format={format} areStops={isInside} framesRef={framesRef} onReadLane={setSaid} />
       </div>
       {pinS !== null && <SpanBar view={view} lanes={layout.lanes} pinS={pinS} cursorS={cursorS} format={format} />}
