@@ -2,7 +2,6 @@ import { describe, expect, it } from "vitest";
 import { bandAt, bandShares, mergeBands } from "@/components/plot/bands";
 import { borderSegments, periodsPerSegment } from "@/components/plot/draw-axis";
 import { onStretches } from "@/components/plot/draw-bands";
-import { viewToCsv } from "@/components/plot/csv";
 import { eventRows, mergeEvents, rowAt } from "@/components/plot/event-rows";
 import { plotToSvg } from "@/components/plot/export";
 import { availableLanes, defaultLaneIds } from "@/components/plot/lanes";
@@ -224,14 +223,5 @@ describe("what leaves the page", () => {
     const sizes = [...svg.matchAll(/font-size="([\d.]+)"/g)].map((match) => Number(match[1]));
     expect(sizes.length).toBeGreaterThan(20);
     expect(Math.min(...sizes)).toBeGreaterThanOrEqual(10.5);
-  });
-
-  it("is a CSV of the window with a column a waveform", () => {
-    const lines = viewToCsv(legTop.view, { fromS: 1e-4, toS: 2e-4 }).trimEnd().split("\r\n");
-    expect(lines[0]!.split(",").slice(0, 2)).toEqual(["timeS", "motorCurrentA"]);
-    const times = lines.slice(1).map((row) => Number(row.split(",")[0]));
-    expect(Math.min(...times)).toBeGreaterThanOrEqual(1e-4);
-    expect(Math.max(...times)).toBeLessThanOrEqual(2e-4);
-    expect(lines.every((row) => row.split(",").length === lines[0]!.split(",").length)).toBe(true);
   });
 });
