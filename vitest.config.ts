@@ -17,6 +17,7 @@ export default defineConfig({
           name: "unit",
           environment: "node",
           include: ["tests/unit/**/*.test.ts", "tests/architecture/**/*.test.ts"],
+          setupFiles: ["tests/support/unit-setup.ts"],
           testTimeout: 30_000,
         },
       },
