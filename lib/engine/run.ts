@@ -210,7 +210,7 @@ export class Run {
     machine.pointsOfPeriod = null;
     if (saved) machine.restore(saved);
     else machine.begin();
-    while (machine.period < period) machine.runPeriod();
+    while (machine.period < period && !machine.isStuck) machine.runPeriod();
     return assembly;
   }
 
@@ -253,7 +253,7 @@ export class Run {
   }
 
   private runTo(machine: Machine, toS: number): void {
-    while (machine.period < machine.periodCount && machine.period / machine.frequencyHz < toS) machine.runPeriod();
+    while (machine.period < machine.periodCount && machine.period / machine.frequencyHz < toS && !machine.isStuck) machine.runPeriod();
   }
 
   /** Readings at instants, in the order asked for; the same numbers as `at` of the run. */

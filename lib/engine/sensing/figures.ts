@@ -217,6 +217,8 @@ export class FigureMeter implements Observer {
   figures(): Figures {
     const { sums: s, bank, machine } = this;
     const t = s.timeS || 1;
+    // a run that stopped before its window has nothing to measure; its status says so
+    const isMeasured = this.currentMaxA >= this.currentMinA;
     const { chain } = bank;
     const isSingleCombined = this.isSingleMidscale();
     const outA = isSingleCombined ? null : s.outputs[OUT_A]! / t;
@@ -226,8 +228,8 @@ export class FigureMeter implements Observer {
     return {
       motorMeanA: s.current / t,
       motorRmsA: Math.sqrt(s.currentSquare / t),
-      motorPeakA: Math.max(Math.abs(this.currentMaxA), Math.abs(this.currentMinA)),
-      motorRippleA: this.currentMaxA - this.currentMinA,
+      motorPeakA: isMeasured ? Math.max(Math.abs(this.currentMaxA), Math.abs(this.currentMinA)) : 0,
+      motorRippleA: isMeasured ? this.currentMaxA - this.currentMinA : 0,
       topARmsA: Math.sqrt(s.topASquare / t),
       topBRmsA: Math.sqrt(s.topBSquare / t),
       supplyMeanA: s.supply / t,
@@ -247,7 +249,7 @@ export class FigureMeter implements Observer {
       clippedShare: s.clippedS / t,
       reconstructionErrorMeanA: this.conversionCount > 0 ? this.errorSumA / this.conversionCount : null,
       reconstructionErrorMaxA: this.conversionCount > 0 ? this.errorMaxA : null,
-      busMaxV: this.busMaxV,
+      busMaxV: isMeasured ? this.busMaxV : 0,
       energyResidualShare: this.energyResidualShare(),
       // bars x turns per second, twice for an odd count (D-38)
       commutationRippleHz: bars ? (bars * Math.abs(s.speed / t) * (bars % 2 === 1 ? 2 : 1)) / (2 * Math.PI) : null,

@@ -109,6 +109,7 @@ export class Machine {
     stage.setParameters(this.parametersAt(0));
     stage.begin(initial.currentA, initial.speedRadPerS, initial.busV ?? supply.voltageV);
     this.period = 0;
+    this.isStuck = false;
   }
 
   private parametersAt(timeS: number): StageParameters {
@@ -422,6 +423,7 @@ export class Machine {
     const { stage } = this;
     const n = saved.numbers;
     this.period = saved.period;
+    this.isStuck = false;
     this.offsetS = 0;
     this.periodStartS = saved.period / this.frequencyHz;
     this.memory = { direction: n[8]!, dwellFromS: n[9]!, dwellToS: n[10]! };
