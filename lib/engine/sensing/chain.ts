@@ -1,7 +1,7 @@
 import type { ScenarioDocument } from "../../scenario/schema";
 import { ROW_BOTTOM_A, ROW_BOTTOM_B, ROW_BRIDGE, ROW_BUS, ROW_CURRENT, ROW_RAIL, ROW_TERMINAL_A, ROW_TOP_A, ROW_TOP_B } from "../model/affine";
 import { isHighState, LEG_OPEN, LEG_THROUGH } from "../model/legs";
-import type { ModeSlot } from "../solver/power-stage";
+import type { ModeSlot } from "../solver/mode-slot";
 import { SAME_INSTANT_S, type ShuntResistances } from "../model/parameters";
 import type { Poles } from "../solver/operator";
 

@@ -1,7 +1,7 @@
 import type { ScenarioDocument } from "../../scenario/schema";
 import type { Conversion } from "../results";
 import type { Machine } from "../solver/machine";
-import { PIECE_LENGTH } from "../solver/power-stage";
+import { PIECE_LENGTH } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
 import { integrateOutputs } from "./output-integral";

@@ -4,7 +4,7 @@ import type { StageParameters } from "../model/parameters";
 import type { Conversion, Figures } from "../results";
 import { rowRootOfSlope } from "../solver/locate";
 import type { Machine } from "../solver/machine";
-import { PIECE_LENGTH, PIECE_START } from "../solver/power-stage";
+import { PIECE_LENGTH, PIECE_START } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
 import { integrateOutputs } from "./output-integral";

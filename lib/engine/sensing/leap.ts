@@ -1,7 +1,7 @@
 import { isDiodeState } from "../model/legs";
 import type { Machine, PeriodState } from "../solver/machine";
 import { exponentialDifference } from "../solver/operator";
-import { PIECE_LENGTH } from "../solver/power-stage";
+import { PIECE_LENGTH } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import type { SensorBank } from "./bank";
 import type { RunMonitor } from "./monitor";

@@ -3,7 +3,8 @@ import { LEG_HIGH_CHANNEL, LEG_LOW_CHANNEL, LEG_THROUGH } from "../model/legs";
 import type { StageParameters } from "../model/parameters";
 import type { EventLog } from "../solver/event-log";
 import type { Machine } from "../solver/machine";
-import { PIECE_LENGTH, PIECE_START, type ModeSlot } from "../solver/power-stage";
+import type { ModeSlot } from "../solver/mode-slot";
+import { PIECE_LENGTH, PIECE_START } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import type { SensorBank } from "./bank";
 

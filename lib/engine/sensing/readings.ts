@@ -4,7 +4,7 @@ import { LEG_WORDS } from "../model/legs";
 import { SAME_INSTANT_S } from "../model/parameters";
 import { TRACE_NAMES, type InstantReading } from "../results";
 import type { Machine } from "../solver/machine";
-import { PIECE_LENGTH, PIECE_START } from "../solver/power-stage";
+import { PIECE_LENGTH, PIECE_START } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import { stateAfter } from "../solver/spectrum";
 import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";

@@ -1,7 +1,7 @@
 import { GATE_HIGH, GATE_LOW, isHighState, LEG_OPEN, LEG_THROUGH, LEG_WORDS } from "../model/legs";
 import { TRACE_NAMES, type Band, type Conduction, type Conversion, type SimulationEvent, type TraceName, type View } from "../results";
 import type { Machine } from "../solver/machine";
-import { PIECE_LENGTH, PIECE_START } from "../solver/power-stage";
+import { PIECE_LENGTH, PIECE_START } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import type { SensorBank } from "./bank";
 import { readTraces, readTracesAtEnd, readTracesAtStart, TRACE_COUNT } from "./readings";

@@ -6,7 +6,9 @@ import { CommandPattern, DutyCommand, type CommandMemory } from "./command";
 import type { EventLog } from "./event-log";
 import { GateDriver, type GateEdge } from "./gates";
 import { rowRoot } from "./locate";
-import { PIECE_LENGTH, PIECE_RIDER_EVENT, PIECE_STAGE_EVENT, PIECE_START, PowerStage, STAGE_BREAK_FORWARD, STAGE_BREAK_REVERSE, STAGE_DIODE_ENDS, STAGE_SHAFT_ZERO, STAGE_SOURCE } from "./power-stage";
+import { PIECE_LENGTH, PIECE_RIDER_EVENT, PIECE_STAGE_EVENT, PIECE_START } from "./piece";
+import { PowerStage } from "./power-stage";
+import { STAGE_BREAK_FORWARD, STAGE_BREAK_REVERSE, STAGE_DIODE_ENDS, STAGE_SHAFT_ZERO, STAGE_SOURCE } from "./stage-guards";
 import type { Observer, Rider } from "./rider";
 import { WindingNode } from "./winding";
 

@@ -1,48 +1,14 @@
-import { fillAffineMode, ROW_CURRENT, ROW_LENGTH, rowAt, type AffineMode } from "../model/affine";
+import { ROW_CURRENT, rowAt, type AffineMode } from "../model/affine";
 import { ConductionResolver } from "../model/conduction";
-import { isDiodeState, LEG_HIGH_DIODE, LEG_LOW_DIODE, LEG_OPEN, LEG_STATE_COUNT } from "../model/legs";
+import { LEG_OPEN, LEG_STATE_COUNT } from "../model/legs";
 import type { StageParameters } from "../model/parameters";
-import { firstDownCrossing, rowValue } from "./locate";
+import { ModeSlot, RING } from "./mode-slot";
 import { buildOperator, OPERATOR_LENGTH, type Poles } from "./operator";
-import { Spectrum } from "./spectrum";
-
-export const STAGE_NO_EVENT = 0;
-export const STAGE_DIODE_ENDS = 1;
-export const STAGE_SHAFT_ZERO = 2;
-export const STAGE_BREAK_FORWARD = 3;
-export const STAGE_BREAK_REVERSE = 4;
-export const STAGE_SOURCE = 5;
-export const STAGE_DIODE_STARTS = 6;
-
-/**
- * Entries of PowerStage.piece. Numbers that pass between functions for every piece go through this array: as arguments
- * or results of calls that are not inlined each would be an allocation (measured: 700 bytes an interval, a third of the time).
- */
-export const PIECE_START = 0;
-export const PIECE_LENGTH = 1;
-export const PIECE_STAGE_EVENT = 2;
-export const PIECE_RIDER_EVENT = 3;
+import { PIECE_LENGTH, PIECE_START } from "./piece";
+import { holdMaxNm, holdMinNm, STAGE_BREAK_FORWARD, STAGE_BREAK_REVERSE, STAGE_DIODE_ENDS, STAGE_DIODE_STARTS, STAGE_NO_EVENT, STAGE_SHAFT_ZERO, STAGE_SOURCE, StageGuards } from "./stage-guards";
 
 const RISING_FRICTION_ERROR = 1e-8;
-const SOURCE_HYSTERESIS = 1e-12;
-const IDLE_S = 1e-15;
 const ARC_RAD = 1;
-
-const RING = 12; // durations kept per mode: a PWM period has at most about ten different ones
-
-/** A mode with its spectrum and the operators built for it; refilled in place when parameters change. */
-export class ModeSlot {
-  readonly mode: AffineMode = { legA: 0, legB: 0, shaftSign: 0, sourceConducts: true, a: new Float64Array(9), b: new Float64Array(3), rows: new Float64Array(ROW_LENGTH), isCurrentAlgebraic: false, isCurrentOpen: false };
-  readonly spectrum = new Spectrum();
-  version = -1;
-  tangentSpeedRadPerS = 0;
-  readonly durations = new Float64Array(RING).fill(-1);
-  readonly operators: Float64Array[] = [];
-  next = 0;
-  /** Rows that the sensing chain derives from this mode, and the fill for which they hold. */
-  readonly sense = new Float64Array(28);
-  senseStamp = -1;
-}
 
 /**
  * The power stage between switching instants: state, conduction mode, exact propagation, its own events.
@@ -75,8 +41,9 @@ export class PowerStage {
   crossings = 0;
 
   private readonly slots: (ModeSlot | undefined)[] = new Array(LEG_STATE_COUNT * LEG_STATE_COUNT * 6);
-  private readonly resolver = new ConductionResolver();
-  private readonly guard = new Float64Array(4);
+  readonly resolver = new ConductionResolver();
+  private readonly startGuard = new Float64Array(4);
+  private readonly guards = new StageGuards(this);
 
   constructor(private readonly poles: Poles) {}
 
@@ -95,17 +62,6 @@ export class PowerStage {
     }
   }
 
-  /** Limits of K_t i within which a shaft at rest stays at rest (D-16, D-11). */
-  private holdMaxNm(): number {
-    const p = this.parameters;
-    return p.staticNm + p.constantNm + (p.activeOpposingNm > 0 ? p.activeOpposingNm : p.activeDrivingNm);
-  }
-
-  private holdMinNm(): number {
-    const p = this.parameters;
-    return -p.staticNm - p.constantNm + (p.activeOpposingNm > 0 ? p.activeDrivingNm : p.activeOpposingNm);
-  }
-
   /** Decides about a shaft at w = 0: stays, or turns the way it is driven. Returns true if it sticks. */
   settleShaft(): boolean {
     const p = this.parameters;
@@ -114,8 +70,8 @@ export class PowerStage {
       return true;
     }
     const torqueNm = p.torqueNmPerA * this.x[0]!;
-    const maxNm = this.holdMaxNm();
-    const minNm = this.holdMinNm();
+    const maxNm = holdMaxNm(p);
+    const minNm = holdMinNm(p);
     if (maxNm > minNm && torqueNm <= maxNm && torqueNm >= minNm) {
       this.shaftSign = 0;
       return true;
@@ -170,13 +126,8 @@ export class PowerStage {
 
   private fill(slot: ModeSlot, tangentSpeedRadPerS: number): void {
     slot.version = this.version;
-    slot.senseStamp = -1;
     this.fills++;
-    slot.tangentSpeedRadPerS = tangentSpeedRadPerS;
-    fillAffineMode(slot.mode, this.parameters, tangentSpeedRadPerS);
-    slot.spectrum.analyse(slot.mode);
-    slot.durations.fill(-1);
-    slot.next = 0;
+    slot.fill(this.parameters, tangentSpeedRadPerS);
   }
 
   /**
@@ -276,80 +227,12 @@ export class PowerStage {
 
   /** Finds the earliest event of the stage inside the piece, given xEnd; its kind is left in `eventKind`. */
   nextEvent(): boolean {
-    const { mode } = this.slot;
-    const p = this.parameters;
-    const h = this.piece[PIECE_LENGTH]!;
-    this.eventKind = STAGE_NO_EVENT;
-    let firstS = -1;
-    if (isDiodeState(mode.legA) || isDiodeState(mode.legB)) {
-      const isForward = mode.legA === LEG_LOW_DIODE || mode.legB === LEG_HIGH_DIODE;
-      firstS = this.watch(STAGE_DIODE_ENDS, isForward ? 1 : -1, 0, 0, 0, h, firstS);
-    } else if (mode.isCurrentOpen && !p.isResistive) firstS = this.watchStart(h, firstS);
-    if (!p.isLocked) firstS = this.watchShaft(h, firstS);
-    if (!p.acceptsReturn && p.hasBusState) {
-      // a hair of hysteresis: a bus that rests at the source voltage is no event
-      const sign = this.sourceConducts ? -1 : 1;
-      firstS = this.watch(STAGE_SOURCE, 0, 0, sign, (SOURCE_HYSTERESIS - sign) * p.sourceV, h, firstS);
-    }
-    if (firstS < 0) return false;
-    this.crossings++;
-    this.piece[PIECE_STAGE_EVENT] = firstS;
-    return true;
+    return this.guards.nextEvent();
   }
 
   /** Pushes what must keep its sign for the piece tried last to stay free of stage events (both ends of it). */
   pushGuards(out: number[]): void {
-    const { x, xEnd, guard, parameters: p } = this;
-    const { mode } = this.slot;
-    if (mode.isCurrentOpen && !p.isResistive) {
-      for (let sign = 1; sign >= -1; sign -= 2) if (this.resolver.startRow(p, sign, guard)) out.push(rowValue(guard, x), rowValue(guard, xEnd));
-    }
-    if (!p.isLocked && this.shaftSign !== 0) out.push(x[1]!, xEnd[1]!);
-    if (!p.isLocked && this.shaftSign === 0) {
-      for (const state of [x, xEnd]) out.push(this.holdMaxNm() - p.torqueNmPerA * state[0]!, p.torqueNmPerA * state[0]! - this.holdMinNm());
-    }
-    if (!p.acceptsReturn && p.hasBusState) out.push(p.sourceV - x[2]!, p.sourceV - xEnd[2]!);
-  }
-
-  private watchStart(h: number, firstS: number): number {
-    const { guard } = this;
-    const p = this.parameters;
-    for (let sign = 1; sign >= -1; sign -= 2) {
-      if (!this.resolver.startRow(p, sign, guard)) continue;
-      firstS = this.watch(STAGE_DIODE_STARTS, 0, -guard[1]!, -guard[2]!, -guard[3]!, h, firstS);
-    }
-    return firstS;
-  }
-
-  private watchShaft(h: number, firstS: number): number {
-    const p = this.parameters;
-    if (this.shaftSign !== 0) {
-      const hasFriction = p.coulombNm + p.constantNm > 0 || p.staticNm > 0 || p.activeOpposingNm !== p.activeDrivingNm || p.fanNmPerRadPerS2 > 0;
-      if (!hasFriction) return firstS;
-      // far from zero, by the larger of the two end slopes: spares nearly every interval the search
-      const { a, b } = this.slot.mode;
-      const { x, xEnd } = this;
-      const slope0 = Math.abs(a[3]! * x[0]! + a[4]! * x[1]! + b[1]!);
-      const slope1 = Math.abs(a[3]! * xEnd[0]! + a[4]! * xEnd[1]! + b[1]!);
-      const reach = 2 * h * (slope0 > slope1 ? slope0 : slope1);
-      if (this.shaftSign * x[1]! > reach && this.shaftSign * xEnd[1]! > 0) return firstS;
-      return this.watch(STAGE_SHAFT_ZERO, 0, this.shaftSign, 0, 0, h, firstS);
-    }
-    const k = p.torqueNmPerA;
-    const afterForward = this.watch(STAGE_BREAK_FORWARD, -k, 0, 0, this.holdMaxNm(), h, firstS);
-    return this.watch(STAGE_BREAK_REVERSE, k, 0, 0, -this.holdMinNm(), h, afterForward);
-  }
-
-  private watch(kind: number, c0: number, c1: number, c2: number, c3: number, h: number, firstS: number): number {
-    const { guard } = this;
-    guard[0] = c0;
-    guard[1] = c1;
-    guard[2] = c2;
-    guard[3] = c3;
-    const atS = firstDownCrossing(guard, this.slot.mode, this.slot.spectrum, this.x, this.xEnd, h);
-    if (atS < 0 || (firstS >= 0 && atS >= firstS) || (this.skipsIdle && atS <= IDLE_S)) return firstS;
-    this.eventKind = kind;
-    return atS;
+    this.guards.pushGuards(out);
   }
 
   /** Puts the state on the far side of the event found last and enters the new mode. */
@@ -387,14 +270,14 @@ export class PowerStage {
     let sign = 1;
     let best = -Infinity;
     for (let s = 1; s >= -1; s -= 2) {
-      if (!this.resolver.startRow(this.parameters, s, this.guard)) continue;
-      const value = this.guard[1]! * this.x[1]! + this.guard[2]! * this.x[2]! + this.guard[3]!;
+      if (!this.resolver.startRow(this.parameters, s, this.startGuard)) continue;
+      const value = this.startGuard[1]! * this.x[1]! + this.startGuard[2]! * this.x[2]! + this.startGuard[3]!;
       if (value > best) {
         best = value;
         sign = s;
       }
     }
-    this.resolver.startRow(this.parameters, sign, this.guard);
+    this.resolver.startRow(this.parameters, sign, this.startGuard);
     this.enter(this.resolver.result.legA, this.resolver.result.legB);
   }
 }

@@ -1,5 +1,6 @@
 import type { Observer } from "./rider";
-import { PIECE_LENGTH, type PowerStage } from "./power-stage";
+import { PIECE_LENGTH } from "./piece";
+import type { PowerStage } from "./power-stage";
 import { stateAfter } from "./spectrum";
 
 /** Three-point Gauss-Legendre on [0, 1]: exact to degree 5, enough for i^2 over a piece of a period. */
