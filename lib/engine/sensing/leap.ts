@@ -1,6 +1,7 @@
 import { isDiodeState } from "../model/legs";
-import type { Machine, PeriodState } from "../solver/machine";
+import type { Machine } from "../solver/machine";
 import { exponentialDifference } from "../solver/operator";
+import { isMovingState, keepsEvents, periodState, returnsTo, setPeriodState, startsLike, type PeriodState } from "../solver/period-state";
 import { PIECE_LENGTH } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import type { SensorBank } from "./bank";
@@ -89,7 +90,7 @@ export class PeriodLeaper {
   /** The reference holds for the period that starts now. */
   private fits(): boolean {
     const { reference: r, machine } = this;
-    if (!r || r.version !== machine.stage.version || !machine.startsLike(r.before, r.duty)) return false;
+    if (!r || r.version !== machine.stage.version || !startsLike(machine, r.before, r.duty)) return false;
     const { x } = machine.stage;
     let used = 0;
     for (let d = 0; d < 3; d++) used += r.reach[d]! * Math.abs(x[d]! - r.before.x[d]!);
@@ -126,14 +127,14 @@ export class PeriodLeaper {
   private survey(): boolean {
     const { machine, bank } = this;
     this.reference = null;
-    const before = machine.periodState();
+    const before = periodState(machine);
     const counts = machine.log ? { ...machine.log.counts } : {};
     const intervals = machine.intervals;
     const base = this.runSurveyed();
     const after = stateVector(machine, bank);
-    const end = machine.periodState();
+    const end = periodState(machine);
     this.monitor.skip(machine.periodS);
-    const isPeriodic = base !== null && machine.returnsTo(before) && !machine.keepsEvents(counts);
+    const isPeriodic = base !== null && returnsTo(machine, before) && !keepsEvents(machine, counts);
     if (!base || !isPeriodic) return this.giveUp();
     const jacobian = new Float64Array(27);
     const reach = new Float64Array(3);
@@ -144,7 +145,7 @@ export class PeriodLeaper {
     machine.log = bank.log = null;
     const isWhole = this.differentiate(before, base, after, jacobian, reach);
     machine.log = bank.log = log;
-    machine.setPeriodState(end);
+    setPeriodState(machine, end);
     machine.intervals = intervals + intervalCount;
     if (!isWhole) return this.giveUp();
     this.reference = { before, after, jacobian, reach, version: machine.stage.version, duty: machine.duty, eventCounts, intervals: intervalCount };
@@ -161,10 +162,10 @@ export class PeriodLeaper {
   private differentiate(before: PeriodState, base: readonly number[], after: Float64Array, jacobian: Float64Array, reach: Float64Array): boolean {
     const { machine, bank, monitor } = this;
     for (let d = 0; d < 3; d++) {
-      if (!machine.isMovingState(d)) continue;
+      if (!isMovingState(machine, d)) continue;
       const scale = d === 0 ? Math.max(Math.abs(before.x[0]!), 0.01 * monitor.currentMaxA, 1e-6) : Math.max(Math.abs(before.x[d]!), 1e-3);
       const step = PERTURBATION * scale;
-      machine.setPeriodState(before);
+      setPeriodState(machine, before);
       machine.stage.x[d]! += step;
       const guards = this.runSurveyed();
       if (!guards || guards.length !== base.length) return false;
