@@ -14,6 +14,14 @@ export const ERROR_A = 16;
 export const ERROR_B = 20;
 export const CURRENT_SLOPE = 24;
 
+/** The outputs that are worked out together. */
+export const OUT_A = 0;
+export const OUT_B = 1;
+export const OUT_COMBINED = 2;
+
+/** A shunt voltage this close to cut-off is at cut-off: 1e-12 V is a thousandth of the smallest offset of any channel. */
+export const CUT_OFF_V = 1e-12;
+
 export type Site = ScenarioDocument["sensing"]["site"];
 
 /** Design values of the sensing chain, and what the faults of the chain make of them at an instant. */
@@ -152,6 +160,11 @@ export class SensingChain {
       sense[at + 3]! += l * c[k]! * b[k]!;
     }
   }
+}
+
+/** Value of the sense row at an offset for the state x. */
+export function rowOf(rows: Float64Array, at: number, x: Float64Array): number {
+  return rows[at]! * x[0]! + rows[at + 1]! * x[1]! + rows[at + 2]! * x[2]! + rows[at + 3]!;
 }
 
 const CURRENT = new Float64Array([1, 0, 0, 0]);

@@ -3,7 +3,8 @@ import type { Conversion } from "../results";
 import type { Machine } from "../solver/machine";
 import { PIECE_LENGTH } from "../solver/piece";
 import type { Observer } from "../solver/rider";
-import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
+import type { SensorBank } from "./bank";
+import { OUT_A, OUT_B, OUT_COMBINED } from "./chain";
 import { integrateOutputs } from "./output-integral";
 import { visitNodes } from "./quadrature";
 

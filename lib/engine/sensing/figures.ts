@@ -6,7 +6,9 @@ import { rowRootOfSlope } from "../solver/locate";
 import type { Machine } from "../solver/machine";
 import { PIECE_LENGTH, PIECE_START } from "../solver/piece";
 import type { Observer } from "../solver/rider";
-import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
+import type { SensorBank } from "./bank";
+import { OUT_A, OUT_B, OUT_COMBINED } from "./chain";
+import { visitExtrema } from "./output-inside";
 import { integrateOutputs } from "./output-integral";
 import { visitNodes } from "./quadrature";
 
@@ -174,8 +176,8 @@ export class FigureMeter implements Observer {
       this.noteHeadroom(bank.outputV(k, bank.z, bank.y), isMidscale);
       this.noteHeadroom(bank.outputV(k, bank.zEnd, bank.yEnd), isMidscale);
       // the scan for extrema is worth its cost only where the piece could bring a smaller headroom
-      const least = Math.min(bank.chain.outputMaxV - bank.boundV(k, 1), isMidscale ? bank.boundV(k, -1) - bank.chain.outputMinV : Infinity);
-      if (least < this.headroomV) bank.visitExtrema(k, stage, () => this.noteHeadroom(bank.outputV(k, bank.zAt, bank.yAt), isMidscale));
+      const least = Math.min(bank.chain.outputMaxV - bank.bounds.boundV(k, 1), isMidscale ? bank.bounds.boundV(k, -1) - bank.chain.outputMinV : Infinity);
+      if (least < this.headroomV) visitExtrema(bank, k, stage, () => this.noteHeadroom(bank.outputV(k, bank.zAt, bank.yAt), isMidscale));
     }
   }
 

@@ -31,7 +31,7 @@ class GuardSurvey implements Observer {
     this.values.push(stage.x[0]!, stage.xEnd[0]!);
     if (isDiodeState(mode.legA) || isDiodeState(mode.legB)) this.values.push(0.5 * stage.x[0]! + 0.5 * stage.xEnd[0]!);
     stage.pushGuards(this.values);
-    this.bank.pushGuards(stage, this.values);
+    this.bank.bounds.pushGuards(stage, this.values);
     this.monitor.pushGuards(this.values);
   }
 }
@@ -96,7 +96,7 @@ export class PeriodLeaper {
     for (let d = 0; d < 3; d++) used += r.reach[d]! * Math.abs(x[d]! - r.before.x[d]!);
     if (!(used < SAFETY)) return false;
     // outputs only average their inputs, whose bounds are guards: they stay inside if they start inside
-    return this.bank.statesInside();
+    return this.bank.bounds.statesInside();
   }
 
   private step(): void {

@@ -1,6 +1,6 @@
 import type { PowerStage } from "../solver/power-stage";
-import { OUT_A, OUT_B, type SensorBank } from "./bank";
-import { RAW_A, RAW_B } from "./chain";
+import type { SensorBank } from "./bank";
+import { OUT_A, OUT_B, RAW_A, RAW_B } from "./chain";
 import { visitNodes } from "./quadrature";
 
 const SUM = new Float64Array(3);
@@ -14,10 +14,10 @@ export function integrateOutputs(bank: SensorBank, stage: PowerStage, h: number,
   const { chain } = bank;
   let inputA: number;
   let inputB = 0;
-  if (bank.isRamp) {
-    bank.integrateRamp(stage, h);
-    inputA = bank.rampIntegral[0]!;
-    inputB = bank.rampIntegral[1]!;
+  if (bank.commutation.isRamp) {
+    bank.ramp.integrate(stage, bank.rows(stage.slot), h);
+    inputA = bank.ramp.integral[0]!;
+    inputB = bank.ramp.integral[1]!;
   } else {
     SUM.fill(0);
     visitNodes(stage, 0, h, (x, w) => {
@@ -25,7 +25,7 @@ export function integrateOutputs(bank: SensorBank, stage: PowerStage, h: number,
       SUM[1]! += w * x[1]!;
       SUM[2]! += w * x[2]!;
     });
-    const rows = bank.senseRows(stage);
+    const rows = bank.rows(stage.slot);
     const along = (at: number) => rows[at]! * SUM[0]! + rows[at + 1]! * SUM[1]! + rows[at + 2]! * SUM[2]! + rows[at + 3]! * h;
     inputA = bank.passes[0] ? along(RAW_A) : 0;
     inputB = bank.passes[1] ? along(RAW_B) : 0;
@@ -46,7 +46,7 @@ function outputIntegral(bank: SensorBank, k: number, inputVs: number, h: number)
   if (isHeld && !bank.holdsPin) return limitV * h;
   const slew = bank.slewRate(k);
   const zIntegral = slew !== 0 ? z[k]! * h + 0.5 * slew * h * h : inputVs - (zEnd[k]! - z[k]!) / chain.poles.amplifierRadPerS;
-  if (!chain.hasFilter) return bank.baseV(k) * h + zIntegral;
+  if (!chain.hasFilter) return bank.base[k]! * h + zIntegral;
   const lag = (yEnd[k]! - y[k]!) / chain.poles.filterRadPerS;
-  return (isHeld ? limitV * h : bank.baseV(k) * h + zIntegral) - lag;
+  return (isHeld ? limitV * h : bank.base[k]! * h + zIntegral) - lag;
 }

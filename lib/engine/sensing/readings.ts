@@ -7,7 +7,9 @@ import type { Machine } from "../solver/machine";
 import { PIECE_LENGTH, PIECE_START } from "../solver/piece";
 import type { Observer } from "../solver/rider";
 import { stateAfter } from "../solver/spectrum";
-import { OUT_A, OUT_B, OUT_COMBINED, type SensorBank } from "./bank";
+import type { SensorBank } from "./bank";
+import { OUT_A, OUT_B, OUT_COMBINED } from "./chain";
+import { readAt } from "./output-inside";
 
 const STATE = new Float64Array(3);
 export const TRACE_COUNT = TRACE_NAMES.length;
@@ -26,7 +28,7 @@ export function readTracesAtEnd(machine: Machine, bank: SensorBank, h: number, o
 export function readTraces(machine: Machine, bank: SensorBank, tauS: number, out: Float64Array): void {
   if (tauS === 0) return readTracesAtStart(machine, bank, out);
   stateAfter(machine.stage.slot.mode, machine.stage.slot.spectrum, machine.stage.x, tauS, STATE);
-  bank.readAt(machine.stage, tauS);
+  readAt(bank, machine.stage, tauS);
   fillTraces(machine, bank, STATE, bank.zAt, bank.yAt, tauS, out);
 }
 

@@ -147,3 +147,16 @@ function buildByExponential({ a, b }: AffineMode, p: number, q: number, h: numbe
     }
   }
 }
+
+/** Component of the operator `o` whose four coefficients start at `at`, for the state x. */
+export const affineAt = (o: Float64Array, at: number, x: Float64Array) => o[at]! * x[0]! + o[at + 1]! * x[1]! + o[at + 2]! * x[2]! + o[at + 3]!;
+
+/** x after the operator. */
+export function advance(o: Float64Array, x: Float64Array): void {
+  const a = affineAt(o, 0, x);
+  const b = affineAt(o, 4, x);
+  const c = affineAt(o, 8, x);
+  x[0] = a;
+  x[1] = b;
+  x[2] = c;
+}
